@@ -34,8 +34,8 @@ struct DirectoryEntry {
     EntryKind kind = EntryKind::Missing; ///< Links are not followed.
 };
 
-/// The file system as the core sees it. Paths are UTF-8 with '/'. Every method reports the world's faults as errors
-/// "file.…" whose place names the path. Nothing follows a symbolic link in the last component.
+/// The file system as the core sees it. Paths are UTF-8 with '/'. Every method reports the world's faults as
+/// errors "file.…" whose place names the path. Nothing follows a symbolic link in the last component.
 class FileSystem {
 public:
     virtual ~FileSystem() = default;
@@ -50,7 +50,8 @@ public:
     virtual Result<void> createDirectory(const std::string& path) = 0;
     /// Opens for appending (mode 0600), creating the file where it is missing and then syncing its directory.
     virtual Result<std::unique_ptr<AppendFile>> openAppend(const std::string& path) = 0;
-    /// Writes a temporary file beside `path`, syncs it, renames it over `path`, syncs the directory (mode 0600).
+    /// Writes a temporary file beside `path`, syncs it, renames it over `path`, syncs the directory (mode
+    /// 0600).
     virtual Result<void> replace(const std::string& path, std::string_view content) = 0;
     /// Cuts the file to `length` bytes and syncs it.
     virtual Result<void> truncate(const std::string& path, std::uint64_t length) = 0;

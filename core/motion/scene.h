@@ -18,17 +18,17 @@ struct Rectangle {
 
 /// A door leaf: hinge, length, and the angles of the closed and the open leaf (drawn as an arc).
 struct Door {
-    double x = 0, y = 0;            ///< hinge, m
-    double width = 0;               ///< m
-    double closed = 0, open = 0;    ///< rad, anticlockwise from +x
+    double x = 0, y = 0;         ///< hinge, m
+    double width = 0;            ///< m
+    double closed = 0, open = 0; ///< rad, anticlockwise from +x
     bool operator==(const Door&) const = default;
 };
 
 /// What stands still around the motions. y points up, x to the right. A value.
 struct Scene {
     std::string name = {};
-    Rectangle bounds = {};                  ///< the part that is drawn
-    std::vector<Rectangle> floor = {};      ///< where the robot may be; the rest is drawn as rooms
+    Rectangle bounds = {};             ///< the part that is drawn
+    std::vector<Rectangle> floor = {}; ///< where the robot may be; the rest is drawn as rooms
     std::vector<Segment> walls = {};
     std::vector<Door> doors = {};
     std::vector<Rectangle> furniture = {};  ///< decoration only

@@ -16,12 +16,12 @@ struct PersonTrack {
 /// One motion: time-stamped states of a robot in the plane, and the people around it. A value.
 /// Invariant of a checked trajectory: at least 2 samples, all lists of one length, times strictly increasing.
 struct Trajectory {
-    std::string name = {};              ///< [A-Za-z0-9_-]{1,64}, unique in its library
-    std::string scene = {};             ///< name of a `Scene` of the study, empty where the study has none
-    std::vector<double> time = {};      ///< s, from the first sample's 0
-    std::vector<double> x = {};         ///< m
-    std::vector<double> y = {};         ///< m
-    std::vector<double> heading = {};   ///< rad, anticlockwise from +x, not wrapped
+    std::string name = {};            ///< [A-Za-z0-9_-]{1,64}, unique in its library
+    std::string scene = {};           ///< name of a `Scene` of the study, empty where the study has none
+    std::vector<double> time = {};    ///< s, from the first sample's 0
+    std::vector<double> x = {};       ///< m
+    std::vector<double> y = {};       ///< m
+    std::vector<double> heading = {}; ///< rad, anticlockwise from +x, not wrapped
     std::vector<PersonTrack> people = {};
 
     double duration() const { return time.empty() ? 0 : time.back() - time.front(); }

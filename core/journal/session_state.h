@@ -1,0 +1,77 @@
+// SPDX-License-Identifier: GPL-3.0-or-later
+#pragma once
+
+#include "core/journal/events.h"
+#include "core/result.h"
+
+#include <optional>
+#include <span>
+#include <vector>
+
+namespace whichway {
+
+/// An answer that stands (was not undone).
+struct AnsweredTrial {
+    int trial = 0;
+    TrialKind kind = TrialKind::Main;
+    std::string left = {}, right = {};
+    int answer = 0;
+    double responseTime = 0;
+    int replays = 0;
+    double wait = 0;
+    double startSkew = 0;
+    std::string time = {};        ///< of the answer
+    std::uint64_t record = 0;     ///< number of the answer's record
+    std::uint64_t planRecord = 0; ///< record of the plan that the pair came from, 0 if none
+    double information = 0;       ///< bits the planner expected, 0 if none
+};
+
+struct QueuedPair {
+    NamedPair pair = {}; ///< lower row first
+    double information = 0;
+    std::uint64_t planRecord = 0;
+};
+
+struct Note {
+    int trial = 0;
+    std::string text = {};
+    std::string time = {};
+};
+
+/// What the events so far amount to. Every field follows from the journal alone. A value.
+struct SessionState {
+    SessionBegan began = {};
+    std::uint64_t events = 0;
+    std::vector<AnsweredTrial> answers = {}; ///< in the order they were given
+    std::optional<TrialShown> onStage = {};  ///< shown and not yet answered
+    std::uint64_t onStagePlan = 0;           ///< record of the plan the pair on the stage came from
+    double onStageInformation = 0;
+    bool undoOpen = false;   ///< the last thing that happened to a trial was its answer
+    int instructionPage = 0; ///< last page shown
+    int breakAfter = 0;      ///< trial after which the last break was shown
+    bool inBreak = false;
+    std::optional<Paused> paused = {};
+    std::vector<QueuedPair> queue = {}; ///< planned main pairs that were not shown yet
+    std::vector<PlanAdopted> plans = {};
+    std::vector<Note> notes = {};
+    int undone = 0;
+    int resumed = 0;
+    int pauses = 0;
+    bool estimateShown = false;
+    double longestWait = 0;
+    std::optional<SessionEnded> ended = {};
+    std::optional<EstimateMade> estimate = {};
+    std::string firstTime = {}, lastTime = {};
+
+    bool isAnswered(int trial) const;
+    int answered(TrialKind kind) const;
+};
+
+/// Applies one more record. @return "journal.order" if the event cannot follow (e.g. an answer without a pair
+/// on the stage): then `state` is unchanged.
+Result<void> apply(SessionState& state, const Record& record);
+
+/// The state after all records, the first of which must be SessionBegan.
+Result<SessionState> replayRecords(std::span<const Record> records);
+
+} // namespace whichway
