@@ -33,15 +33,17 @@ std::uint64_t planSeed(const SessionBegan& began, std::uint64_t id) {
     return deriveSeed(fromProtocol, 1000 + id);
 }
 
-PlanRequest planRequestOf(const SessionBegan& began, std::span<const AnsweredTrial> answers, std::span<const int> known,
-                          std::span<const NamedPair> pending, std::uint64_t id, int batch) {
+PlanRequest planRequestOf(const SessionBegan& began, std::span<const AnsweredTrial> answers,
+                          std::span<const int> known, std::span<const NamedPair> pending, std::uint64_t id,
+                          int batch) {
     const Protocol& protocol = began.protocol;
     const auto pairOf = [&](const std::string& left, const std::string& right) {
         return Pair{rowOf(protocol, left), rowOf(protocol, right)};
     };
     PlanRequest request{.id = id, .batch = batch, .seed = planSeed(began, id)};
     for (const AnsweredTrial& answer : answers)
-        if (answer.kind == TrialKind::Main && std::find(known.begin(), known.end(), answer.trial) != known.end())
+        if (answer.kind == TrialKind::Main &&
+            std::find(known.begin(), known.end(), answer.trial) != known.end())
             request.answered.push_back({.pair = pairOf(answer.left, answer.right), .answer = answer.answer});
     for (const NamedPair& pair : pending)
         request.pending.push_back(pairOf(pair.left, pair.right));
@@ -53,7 +55,8 @@ PlanRequest planRequestOf(const SessionBegan& began, std::span<const AnsweredTri
             request.reserved.push_back(pair.canonical());
     }
     std::sort(request.reserved.begin(), request.reserved.end());
-    request.reserved.erase(std::unique(request.reserved.begin(), request.reserved.end()), request.reserved.end());
+    request.reserved.erase(std::unique(request.reserved.begin(), request.reserved.end()),
+                           request.reserved.end());
     return request;
 }
 

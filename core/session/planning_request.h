@@ -16,13 +16,14 @@ std::shared_ptr<const PlanningProblem> planningProblemOf(const Protocol& protoco
 /// Row of a motion in the protocol's feature table. @return -1 if it is not of the main library.
 int rowOf(const Protocol& protocol, const std::string& motion);
 
-/// The request for a plan that knows the answers of `known` (trial numbers) and treats `pending` (presented order) as
-/// unanswered. It follows from the session alone, so that a replay asks the very same.
-PlanRequest planRequestOf(const SessionBegan& began, std::span<const AnsweredTrial> answers, std::span<const int> known,
-                          std::span<const NamedPair> pending, std::uint64_t id, int batch);
+/// The request for a plan that knows the answers of `known` (trial numbers) and treats `pending` (presented
+/// order) as unanswered. It follows from the session alone, so that a replay asks the very same.
+PlanRequest planRequestOf(const SessionBegan& began, std::span<const AnsweredTrial> answers,
+                          std::span<const int> known, std::span<const NamedPair> pending, std::uint64_t id,
+                          int batch);
 
-/// Seed of a session's request number `id`. The first request, made before any answer, has the same seed for every
-/// participant of a protocol, so that it can be planned when the study is opened.
+/// Seed of a session's request number `id`. The first request, made before any answer, has the same seed for
+/// every participant of a protocol, so that it can be planned when the study is opened.
 std::uint64_t planSeed(const SessionBegan& began, std::uint64_t id);
 
 } // namespace whichway

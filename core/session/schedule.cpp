@@ -171,7 +171,8 @@ Result<std::vector<ScheduledTrial>> drawSchedule(const Protocol& protocol, std::
 
     std::vector<ScheduledTrial> schedule;
     for (int i = 0; i < protocol.trials.practice && !protocol.practicePairs.empty(); ++i) {
-        const auto& pair = protocol.practicePairs[static_cast<std::size_t>(i) % protocol.practicePairs.size()];
+        const auto& pair =
+            protocol.practicePairs[static_cast<std::size_t>(i) % protocol.practicePairs.size()];
         schedule.push_back({.kind = TrialKind::Practice, .left = pair.left, .right = pair.right});
     }
     BalancedSides sides(random);
