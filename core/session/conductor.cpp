@@ -329,9 +329,7 @@ Result<void> Conductor::undo() {
     std::erase_if(asked_, [&](const Asked& asked) {
         return std::find(asked.known.begin(), asked.known.end(), last.trial) != asked.known.end();
     });
-    if (auto shown = showAgain(
-            TrialShown{.trial = last.trial, .kind = last.kind, .left = last.left, .right = last.right});
-        !shown)
+    if (auto shown = showAgain(*state_.onStage); !shown)
         return shown;
     if (last.kind == TrialKind::Main)
         askForPlan();
