@@ -2,45 +2,39 @@
 #include "core/files/nearest_name.h"
 
 #include <algorithm>
-#include <array>
 #include <cstddef>
+#include <vector>
 
 namespace whichway {
-
 namespace {
 
-constexpr std::size_t kLongest = 64;
-using Row = std::array<std::size_t, kLongest + 1>;
-
-std::size_t distance(std::string_view a, std::string_view b) {
-    Row beforeLast = {}, last = {}, now = {};
+std::size_t distanceBetween(std::string_view a, std::string_view b) {
+    std::vector<std::size_t> beforeLast(b.size() + 1), last(b.size() + 1), row(b.size() + 1);
     for (std::size_t j = 0; j <= b.size(); ++j)
-        now[j] = j;
+        last[j] = j;
     for (std::size_t i = 1; i <= a.size(); ++i) {
-        beforeLast = last;
-        last = now;
-        now[0] = i;
+        row[0] = i;
         for (std::size_t j = 1; j <= b.size(); ++j) {
-            now[j] = std::min({last[j] + 1, now[j - 1] + 1, last[j - 1] + (a[i - 1] == b[j - 1] ? 0u : 1u)});
+            row[j] = std::min({last[j] + 1, row[j - 1] + 1, last[j - 1] + (a[i - 1] == b[j - 1] ? 0u : 1u)});
             if (i > 1 && j > 1 && a[i - 1] == b[j - 2] && a[i - 2] == b[j - 1])
-                now[j] = std::min(now[j], beforeLast[j - 2] + 1);
+                row[j] = std::min(row[j], beforeLast[j - 2] + 1);
         }
+        beforeLast.swap(last);
+        last.swap(row);
     }
-    return now[b.size()];
+    return last[b.size()];
 }
 
 } // namespace
 
 std::string nearestName(std::string_view name, std::span<const std::string> known) {
     std::string nearest;
-    std::size_t least = kLongest;
+    std::size_t least = std::string_view::npos;
     for (const std::string& candidate : known) {
-        if (name.size() > kLongest || candidate.size() > kLongest)
-            continue;
-        const std::size_t edits = distance(name, candidate);
-        const std::size_t allowed = std::max<std::size_t>(1, std::max(name.size(), candidate.size()) / 3);
-        if (edits <= allowed && edits < least) {
-            least = edits;
+        const std::size_t distance = distanceBetween(name.substr(0, 200), candidate);
+        const std::size_t longer = std::max(name.size(), candidate.size());
+        if (distance < least && distance <= (longer + 2) / 3) {
+            least = distance;
             nearest = candidate;
         }
     }

@@ -7,10 +7,9 @@
 
 namespace whichway {
 
-/// The known name that is most likely meant by `name`, or "" where none is near: the least optimal string
-/// alignment distance (insertions, deletions, substitutions and swaps of neighbours, after Damerau 1964), at
-/// most a third of the longer length and at least one edit; the first of equals. Cost: O(names length^2);
-/// names longer than 64 bytes are near nothing.
+/// The known name that differs from `name` by the fewest insertions, deletions, replacements and swaps of
+/// neighbours (the optimal string alignment distance); empty if even that one differs in more than a third of
+/// its letters.
 std::string nearestName(std::string_view name, std::span<const std::string> known);
 
 } // namespace whichway

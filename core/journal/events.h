@@ -149,9 +149,9 @@ using Event = std::variant<SessionBegan, InstructionShown, PlanAdopted, TrialSho
 /// An event as it stands in the journal.
 struct Record {
     std::uint64_t number = 0;   ///< from 1
-    std::int64_t monotonic = 0; ///< ns, within one boot
-    std::string boot = {};      ///< which boot, random within a journal
-    std::string time = {};      ///< UTC offset included
+    int run = 0;                ///< which run of the program wrote it, from 1
+    std::int64_t monotonic = 0; ///< ns; comparable within one run
+    std::string time = {};      ///< local time with its offset from UTC
     Event event = {};
     bool operator==(const Record&) const = default;
 };

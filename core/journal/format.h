@@ -18,7 +18,7 @@ struct EncodedRecord {
     std::string hash = {}; ///< of this line; the next line names it
 };
 
-/// One line of the journal: {"number", "type", "time", "boot", "monotonic_ns", "payload", "previous",
+/// One line of the journal: {"number", "type", "time", "run", "monotonic_ns", "payload", "previous",
 /// "hash"}, numbers in full precision. The hash is SHA-256 over the previous hash and the line without its
 /// own hash (see DEVELOPERS.md).
 EncodedRecord encodeRecord(const Record& record, std::string_view previousHash);

@@ -44,7 +44,7 @@ private:
     FileSystem* files_;
     const Clock* clock_;
     std::string path_;
-    std::string boot_;
+    int run_ = 1;
     std::unique_ptr<AppendFile> file_;
     std::uint64_t number_ = 0;
     std::uint64_t goodBytes_ = 0;

@@ -4,6 +4,7 @@
 #include "core/journal/events.h"
 #include "core/result.h"
 
+#include <map>
 #include <optional>
 #include <span>
 #include <vector>
@@ -32,6 +33,13 @@ struct QueuedPair {
     std::uint64_t planRecord = 0;
 };
 
+/// A trial that was shown at least once.
+struct ShownTrial {
+    TrialShown shown = {};        ///< as it was shown first
+    std::uint64_t planRecord = 0; ///< record of the plan that its pair came from, 0 if none
+    double information = 0;
+};
+
 struct Note {
     int trial = 0;
     std::string text = {};
@@ -43,12 +51,11 @@ struct SessionState {
     SessionBegan began = {};
     std::uint64_t events = 0;
     std::vector<AnsweredTrial> answers = {}; ///< in the order they were given
-    std::optional<TrialShown> onStage = {};  ///< shown and not yet answered
-    std::uint64_t onStagePlan = 0;           ///< record of the plan the pair on the stage came from
-    double onStageInformation = 0;
-    bool undoOpen = false;   ///< the last thing that happened to a trial was its answer
-    int instructionPage = 0; ///< last page shown
-    int breakAfter = 0;      ///< trial after which the last break was shown
+    std::optional<TrialShown> onStage = {};  ///< shown and not yet answered, or undone and to be shown again
+    std::map<int, ShownTrial> shown = {};    ///< every trial that was shown, by number
+    bool undoOpen = false;                   ///< the last thing that happened to a trial was its answer
+    int instructionPage = 0;                 ///< last page shown
+    int breakAfter = 0;                      ///< trial after which the last break was shown
     bool inBreak = false;
     std::optional<Paused> paused = {};
     std::vector<QueuedPair> queue = {}; ///< planned main pairs that were not shown yet

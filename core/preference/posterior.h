@@ -48,6 +48,9 @@ struct SamplerSettings {
     int warmUp = 150; ///< iterations per chain, discarded
     int drawsPerChain = 1000;
     std::uint64_t seed = 1;
+    /// Summarise, and where the summaries show no convergence go on, up to eight times the draws, which are
+    /// then thinned to `drawsPerChain`. Off: just the draws, for plans.
+    bool diagnose = true;
 };
 
 /// Hamiltonian Monte Carlo whitened by an empirical-Bayes Laplace fit. Same input, same bits, on any machine.

@@ -10,6 +10,7 @@
 #include "core/result.h"
 #include "core/study/study.h"
 
+#include <chrono>
 #include <memory>
 #include <optional>
 #include <string>
@@ -50,6 +51,7 @@ struct SessionSetup {
     std::string code = {};
     std::string language = {}; ///< empty: the study's first
     std::uint64_t seed = 0;    ///< of the schedule and the plans
+    std::string id = {};       ///< of the session, 32 hexadecimal digits; empty: a fresh random one
 };
 
 /// What a conductor works with; all of it must outlive the conductor.
@@ -118,10 +120,16 @@ private:
 
     Result<void> append(Event event);
     Result<void> showTrial();
+    Result<void> showAgain(TrialShown shown);
     Result<void> finish();
+    Result<void> end(SessionEnded ended);
     void askForPlan();
-    Result<void> adoptPlan(bool patient);
+    Result<void> adoptPlan();
+    bool knowsAllShown(const Asked& asked) const;
+    /// The next trial's number; 0 if it is a main trial, none is ready, and no held-out pair can come early
+    /// instead.
     int nextTrial(bool mainReady) const;
+    const ScheduledTrial& scheduled(int trial) const;
     bool breakDue() const;
 
     const Study& study_;
@@ -135,6 +143,7 @@ private:
     std::vector<Asked> asked_; ///< requests whose plans may still be adopted
     std::uint64_t lastRequest_ = 0;
     std::string planProblem_;
+    std::optional<std::chrono::nanoseconds> waitingSince_; ///< since when no pair is ready
 };
 
 } // namespace whichway

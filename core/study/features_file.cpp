@@ -45,7 +45,7 @@ GivenFeatures parseFeaturesFile(std::string_view content, const std::string& fil
                                 std::span<const FeatureDefinition> features,
                                 std::span<const std::string> motions,
                                 std::span<const std::string> mainMotions, std::vector<Error>& problems) {
-    const Result<CsvTable> table = parseCsv(content, file);
+    const Result<CsvTable> table = parseCsv(content, file, kTableLimits);
     if (!table) {
         problems.push_back(table.error());
         return {};

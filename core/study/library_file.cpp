@@ -31,7 +31,7 @@ Library plainLibrary(std::span<const std::string> motions, std::span<const std::
 Library parseLibraryFile(std::string_view content, const std::string& file,
                          std::span<const std::string> motions, std::span<const std::string> scenes,
                          std::vector<Error>& problems) {
-    const Result<CsvTable> table = parseCsv(content, file);
+    const Result<CsvTable> table = parseCsv(content, file, kTableLimits);
     if (!table) {
         problems.push_back(table.error());
         return {};

@@ -13,7 +13,6 @@ namespace whichway {
 
 namespace {
 
-constexpr std::size_t kTextBytes = 4000;
 constexpr std::size_t kLanguages = 50;
 constexpr std::size_t kPages = 20;
 constexpr std::size_t kScenes = 100;
@@ -21,24 +20,9 @@ constexpr std::size_t kPairs = 1000;
 
 using Need = StudySection::Need;
 
-/// A text that people read: not blank, not endless, no control characters but line ends and tabs.
-void checkText(const std::string& text, const Place& place, StudySection& section) {
-    const auto isControl = [](char c) {
-        return (static_cast<unsigned char>(c) < 0x20 && c != '\n' && c != '\r' && c != '\t') || c == 0x7f;
-    };
-    if (text.find_first_not_of(" \t\r\n") == std::string::npos)
-        section.report("study.text", place, "This text is empty.", "Write what the participant is to read.");
-    else if (text.size() > kTextBytes)
-        section.report("study.text", place, fmt::format("This text is longer than {} bytes.", kTextBytes),
-                       "Shorten it, or divide it into pages.", {std::to_string(kTextBytes)});
-    else if (std::any_of(text.begin(), text.end(), isControl))
-        section.report("study.text", place, "This text has a control character in it.", "Take it out.");
-}
-
 std::string readText(StudySection& section, const std::string& key, Need need) {
     const std::string text = section.text(key, need);
-    if (section.isText(key))
-        checkText(text, section.placeOf(key), section);
+    section.checkText(key);
     return text;
 }
 
@@ -46,7 +30,7 @@ std::vector<std::string> readTextList(StudySection& section, const std::string& 
     std::vector<Place> places;
     std::vector<std::string> texts = section.textList(key, need, places);
     for (std::size_t i = 0; i < texts.size(); ++i)
-        checkText(texts[i], places[i], section);
+        section.checkText(texts[i], places[i]);
     return texts;
 }
 
@@ -123,11 +107,14 @@ void readHead(StudySection& root, StudyFile& study) {
 
 void readAnswers(StudySection& root, Protocol& protocol) {
     StudySection answers = root.table("answers", Need::Required);
+    protocol.levels = 0; // unknown
     if (!answers.exists())
         return;
     protocol.levels = static_cast<int>(answers.integer("levels", Need::Required, 3, 1, 7));
+    if (answers.isFaulty("levels"))
+        protocol.levels = 0;
     protocol.cannotTell = answers.flag("cannot_tell", false);
-    if (protocol.cannotTell && protocol.levels < 2)
+    if (protocol.cannotTell && protocol.levels == 1)
         answers.report("study.cannot-tell", answers.placeOf("cannot_tell"),
                        "“Cannot tell” needs answers in grades, and levels = 1 asks for the choice alone.",
                        "Set levels to 2 or more, or cannot_tell = false.");
@@ -135,8 +122,7 @@ void readAnswers(StudySection& root, Protocol& protocol) {
 }
 
 void readConfidence(StudySection& section, const Protocol& protocol, Texts& texts) {
-    const bool graded = protocol.levels > 1;
-    if (!graded) {
+    if (protocol.levels == 1) {
         for (const char* key : {"sureness", "confidence"})
             if (section.has(key))
                 section.report(
@@ -148,7 +134,7 @@ void readConfidence(StudySection& section, const Protocol& protocol, Texts& text
     texts.sureness = readText(section, "sureness", Need::Required);
     texts.confidence = readTextList(section, "confidence", Need::Required);
     const std::size_t levels = static_cast<std::size_t>(protocol.levels);
-    if (section.isList("confidence") && texts.confidence.size() != levels)
+    if (section.isList("confidence") && levels > 0 && texts.confidence.size() != levels)
         section.report(
             "study.words", section.placeOf("confidence"),
             fmt::format("There are {} words for {} confidence levels.", texts.confidence.size(), levels),
@@ -244,7 +230,7 @@ void readTrials(StudySection& root, TrialSettings& trials) {
     trials.identical = count("identical", trials.identical, 0, 50);
     trials.breakAfter = count("break_after", trials.breakAfter, 0, 1000);
     trials.greyInterval = section.number("grey_interval_s", trials.greyInterval, 0, 10);
-    if (trials.repeat > trials.heldOut)
+    if (trials.repeat > trials.heldOut && !section.isFaulty("held_out") && !section.isFaulty("repeat"))
         section.report(
             "study.repeats", section.placeOf("repeat"),
             fmt::format("{} repeats are asked for, but repeats are of the {} held-out pairs, each at most "
@@ -274,7 +260,8 @@ readPairs(StudySection& root, const std::string& key, const char* first, const c
         section.refuseUnknownKeys();
     }
     const std::string trials = key == "practice_pair" ? "practice" : "catch";
-    if (pairs.size() < static_cast<std::size_t>(needed))
+    if (pairs.size() < static_cast<std::size_t>(needed) && !root.isFaulty(key) &&
+        !root.isFaulty("trials." + trials))
         root.report("study.too-few-pairs", root.placeOf("trials." + trials),
                     fmt::format("{} {} trials are asked for, but there are {} tables [[{}]].", needed, trials,
                                 pairs.size(), key),
@@ -318,6 +305,7 @@ StudyFile parseStudyFile(std::string_view content, const std::string& file, std:
     std::optional<StudySection> root = StudySection::parse(content, file, study.places, problems);
     if (!root)
         return study;
+    study.isToml = true;
     Protocol& protocol = study.protocol;
     readHead(*root, study);
     readAnswers(*root, protocol);

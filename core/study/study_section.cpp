@@ -10,6 +10,15 @@
 
 namespace whichway {
 
+namespace {
+
+/// Longest text that people are to read.
+constexpr std::size_t kTextBytes = 4000;
+/// So many unknown keys of one table are named.
+constexpr int kKeysNamed = 50;
+
+} // namespace
+
 using Kind = TomlNode::Kind;
 
 struct StudySection::Reading {
@@ -60,6 +69,11 @@ bool StudySection::isFaulty(const std::string& path) const {
 
 Place StudySection::placeOf(const std::string& path) const {
     return reading_->places.of(pathOf(path));
+}
+
+Place StudySection::keyPlaceOf(const std::string& key) const {
+    const TomlNode* node = exists() ? node_->member(key) : nullptr;
+    return node == nullptr ? place() : node->keyPlace;
 }
 
 std::vector<std::string> StudySection::keysInOrder() const {
@@ -226,6 +240,24 @@ std::vector<StudySection> StudySection::tables(const std::string& key) {
     return sections;
 }
 
+void StudySection::checkText(const std::string& key) {
+    if (isText(key))
+        checkText(node_->member(key)->text, placeOf(key));
+}
+
+void StudySection::checkText(const std::string& text, const Place& place) {
+    const auto isControl = [](char c) {
+        return (static_cast<unsigned char>(c) < 0x20 && c != '\n' && c != '\r' && c != '\t') || c == 0x7f;
+    };
+    if (text.find_first_not_of(" \t\r\n") == std::string::npos)
+        report("study.text", place, "This text is empty.", "Write what people are to read.");
+    else if (text.size() > kTextBytes)
+        report("study.text", place, fmt::format("This text is longer than {} bytes.", kTextBytes),
+               "Shorten it, or divide it into pages.", {std::to_string(kTextBytes)});
+    else if (std::any_of(text.begin(), text.end(), isControl))
+        report("study.text", place, "This text has a control character in it.", "Take it out.");
+}
+
 void StudySection::alsoKnows(std::initializer_list<std::string_view> keys) {
     known_.insert(known_.end(), keys.begin(), keys.end());
 }
@@ -233,8 +265,9 @@ void StudySection::alsoKnows(std::initializer_list<std::string_view> keys) {
 void StudySection::refuseUnknownKeys() {
     if (!exists())
         return;
+    int named = 0;
     for (const auto& [key, value] : node_->members)
-        if (std::find(known_.begin(), known_.end(), key) == known_.end())
+        if (std::find(known_.begin(), known_.end(), key) == known_.end() && named++ < kKeysNamed)
             report("toml.unknown-key", value.keyPlace,
                    path_.empty() ? fmt::format("“{}” is not a key of a study.", key)
                                  : fmt::format("“{}” is not a key of [{}].", key, path_),

@@ -34,6 +34,7 @@ public:
     Place place() const { return placeOf(""); }
     /// Of a dotted path below this table; of the nearest table around it where it is absent.
     Place placeOf(const std::string& path) const;
+    Place keyPlaceOf(const std::string& key) const; ///< of the key itself, not of its value
     std::vector<std::string> keysInOrder() const;
 
     std::string text(const std::string& key, Need need);
@@ -47,6 +48,11 @@ public:
     std::size_t choice(const std::string& key, const std::vector<std::string>& phrases);
     StudySection table(const std::string& key, Need need);
     std::vector<StudySection> tables(const std::string& key);
+
+    /// Where the key holds a text: that people can read it, not blank, not endless, without control
+    /// characters but line ends and tabs. "study.text".
+    void checkText(const std::string& key);
+    void checkText(const std::string& text, const Place& place);
 
     void alsoKnows(std::initializer_list<std::string_view> keys);
     void refuseUnknownKeys();

@@ -13,6 +13,9 @@ namespace whichway {
 
 // What library.csv and features.csv have in common: named columns and a column of motions.
 
+/// As many rows as a study may have motions, several times over.
+inline constexpr CsvLimits kTableLimits = {.rows = 20000, .columns = 128};
+
 struct WantedColumn {
     std::string name = {};
     bool needed = true;

@@ -13,13 +13,8 @@ constexpr std::string_view kSymbols[] = {"m",  "s",  "kg",  "g",   "rad", "N",  
                                          "kN", "kJ", "kW",  "kHz", "kPa", "mA", "mV", "%"};
 
 bool isFactor(std::string_view factor) {
-    const std::size_t caret = factor.find('^');
-    if (caret != std::string_view::npos) {
-        const std::string_view power = factor.substr(caret + 1);
-        if (power.size() != 1 || power[0] < '2' || power[0] > '9')
-            return false;
-        factor = factor.substr(0, caret);
-    }
+    if (!factor.empty() && factor.back() >= '2' && factor.back() <= '9')
+        factor.remove_suffix(1); // the power
     return std::find(std::begin(kSymbols), std::end(kSymbols), factor) != std::end(kSymbols);
 }
 

@@ -92,7 +92,7 @@ const std::string kSettings = "measure = \"travel time\"\n";
 const Fault kFaults[] = {
     // study.toml as a file
     {"NoStudyFile", erase("study.toml"), "study.missing-file", "study.toml"},
-    {"StudyFileNotUtf8", toml("\"Left\"", "\"L\xE9ft\""), "toml.encoding", "study.toml:15:10"},
+    {"StudyFileNotUtf8", toml("\"Left\"", "\"L\xE9" "ft\""), "toml.encoding", "study.toml:15:10"},
     {"NulInStudyFile", toml("\"Left\"", std::string("\"L\0ft\"", 6)), "toml.syntax", "study.toml:15:10"},
     {"TomlSyntax", toml("levels = 2", "levels = "), "toml.syntax", "study.toml:9:10"},
     {"KeyTwice", toml("levels = 2", "levels = 2\nlevels = 2"), "toml.syntax", "study.toml:10:1"},
@@ -304,7 +304,7 @@ TEST_P(BrokenStudy, IsRefusedWithTheOneReasonAndItsPlace) {
 }
 
 INSTANTIATE_TEST_SUITE_P(OneFaultEach, BrokenStudy, testing::ValuesIn(kFaults),
-                         [](const auto& info) { return std::string(info.param.name); });
+                         [](const auto& row) { return std::string(row.param.name); });
 
 TEST(StudyReading, ReadsTheSoundStudyThatTheOthersSpoil) {
     const StudyReading reading = readBack(TinyStudy(), "sound");
@@ -418,8 +418,8 @@ TEST(ProtocolHash, ChangesWithEveryFileThatAnAnswerDependsOn) {
     const std::string plain = readBack(TinyStudy(), "hash").study.protocol.hash;
     EXPECT_EQ(readBack(TinyStudy(), "hash_again").study.protocol.hash, plain);
     for (const auto& spoil : std::vector<std::function<void(TinyStudy&)>>{
-             toml("\"Thank you.\"", "\"Thanks.\""), features("m1,12.5", "m1,12.6"), library("c2,catch\n", "c2,main\n"),
-             in("trajectories/p1.csv", "0.5,0.25,0,0", "0.5,0.26,0,0")}) {
+             toml("\"Thank you.\"", "\"Thanks.\""), features("m1,12.5", "m1,12.6"),
+             library("c2,catch\n", "c2,main\n"), in("trajectories/p1.csv", "0.5,0.25,0,0", "0.5,0.26,0,0")}) {
         TinyStudy study;
         spoil(study);
         if (study.files["library.csv"].find("c2,main") != std::string::npos)

@@ -1,0 +1,105 @@
+// SPDX-License-Identifier: GPL-3.0-or-later
+#include "core/journal/journal.h"
+
+#include "core/journal/format.h"
+
+#include <utility>
+
+namespace whichway {
+namespace {
+
+/// A session of some hundred trials with a library of some thousand motions stays far below this.
+constexpr std::uint64_t kLongestJournal = 512ull << 20;
+
+} // namespace
+
+Result<JournalReading> readJournal(const FileSystem& files, const std::string& path) {
+    auto content = files.read(path, kLongestJournal);
+    if (!content)
+        return content.error();
+    JournalReading reading{.lastHash = std::string(kJournalRoot)};
+    std::string_view rest = *content;
+    while (!rest.empty()) {
+        const std::size_t newline = rest.find('\n');
+        if (newline == std::string_view::npos)
+            break;
+        auto decoded = decodeRecord(rest.substr(0, newline), reading.records.size() + 1, reading.lastHash);
+        if (!decoded) {
+            // Only what was being written can be torn, and that is the last line; the newline itself may have
+            // been among the bytes that reached the disk.
+            const bool last = newline + 1 == rest.size();
+            if (last && decoded.error().code == "journal.corrupt")
+                break;
+            Error error = decoded.error();
+            error.place.file = path;
+            return error;
+        }
+        reading.records.push_back(std::move(decoded->record));
+        reading.lastHash = std::move(decoded->hash);
+        reading.goodBytes += newline + 1;
+        rest.remove_prefix(newline + 1);
+    }
+    reading.tornBytes = content->size() - reading.goodBytes;
+    return reading;
+}
+
+JournalWriter::JournalWriter(FileSystem& files, const Clock& clock, std::string path)
+    : files_(&files), clock_(&clock), path_(std::move(path)) {}
+
+Result<JournalWriter> JournalWriter::create(FileSystem& files, const Clock& clock, const std::string& path) {
+    if (files.kind(path) != EntryKind::Missing)
+        return Error{.code = "file.exists",
+                     .place = {.file = path},
+                     .message = "There is a journal already.",
+                     .remedy = "Begin the session in a folder of its own."};
+    auto file = files.openAppend(path);
+    if (!file)
+        return file.error();
+    JournalWriter writer(files, clock, path);
+    writer.file_ = std::move(*file);
+    writer.lastHash_ = std::string(kJournalRoot);
+    return writer;
+}
+
+Result<JournalWriter> JournalWriter::resume(FileSystem& files, const Clock& clock, const std::string& path,
+                                            const JournalReading& reading) {
+    JournalWriter writer(files, clock, path);
+    if (reading.tornBytes > 0)
+        if (auto cut = files.truncate(path, reading.goodBytes); !cut)
+            return cut.error();
+    auto file = files.openAppend(path);
+    if (!file)
+        return file.error();
+    writer.file_ = std::move(*file);
+    writer.run_ = reading.records.empty() ? 1 : reading.records.back().run + 1;
+    writer.number_ = reading.records.size();
+    writer.goodBytes_ = reading.goodBytes;
+    writer.lastHash_ = reading.lastHash;
+    return writer;
+}
+
+Result<Record> JournalWriter::append(Event event) {
+    if (tailInDoubt_) {
+        if (auto cut = files_->truncate(path_, goodBytes_); !cut)
+            return cut.error();
+        tailInDoubt_ = false;
+    }
+    Record record{.number = number_ + 1,
+                  .run = run_,
+                  .monotonic = clock_->sinceBoot().count(),
+                  .time = clock_->wallTime(),
+                  .event = std::move(event)};
+    EncodedRecord encoded = encodeRecord(record, lastHash_);
+    tailInDoubt_ = true;
+    if (auto written = file_->append(encoded.line); !written)
+        return written.error();
+    if (auto synced = file_->sync(); !synced)
+        return synced.error();
+    tailInDoubt_ = false;
+    number_ = record.number;
+    goodBytes_ += encoded.line.size();
+    lastHash_ = std::move(encoded.hash);
+    return record;
+}
+
+} // namespace whichway
