@@ -28,18 +28,18 @@ Library plainLibrary(std::span<const std::string> motions, std::span<const std::
     return library;
 }
 
-Library parseLibraryFile(std::string_view content, const std::string& file,
-                         std::span<const std::string> motions, std::span<const std::string> scenes,
-                         std::vector<Error>& problems) {
+std::optional<Library> parseLibraryFile(std::string_view content, const std::string& file,
+                                        std::span<const std::string> motions,
+                                        std::span<const std::string> scenes, std::vector<Error>& problems) {
     const Result<CsvTable> table = parseCsv(content, file, kTableLimits);
     if (!table) {
         problems.push_back(table.error());
-        return {};
+        return std::nullopt;
     }
     const TableColumns columns =
         findColumns(*table, {{"trajectory", true}, {"scene", scenes.size() > 1}, {"role", true}}, problems);
     if (!columns.complete)
-        return {};
+        return std::nullopt;
     const int motionColumn = columns.at[0], sceneColumn = columns.at[1], roleColumn = columns.at[2];
 
     Library library;

@@ -5,6 +5,7 @@
 #include "core/result.h"
 
 #include <map>
+#include <optional>
 #include <span>
 #include <string>
 #include <string_view>
@@ -39,9 +40,11 @@ using Library = std::map<std::string, LibraryEntry>;
 /// Reads it against the motions that are there. Appends to `problems`: the codes of csv.h,
 /// "study.missing-column", "study.unknown-column", "study.unknown-motion", "study.duplicate-motion",
 /// "study.unknown-scene", "study.unknown-role", and "study.unlisted-motion" for a motion without a row.
-Library parseLibraryFile(std::string_view content, const std::string& file,
-                         std::span<const std::string> motions, std::span<const std::string> scenes,
-                         std::vector<Error>& problems);
+/// @return what could be read; nothing where the table as a whole is at fault. A motion whose role is at
+/// fault counts as main.
+std::optional<Library> parseLibraryFile(std::string_view content, const std::string& file,
+                                        std::span<const std::string> motions,
+                                        std::span<const std::string> scenes, std::vector<Error>& problems);
 
 /// The library of a study folder without library.csv: every motion is main, in the only scene or in none.
 Library plainLibrary(std::span<const std::string> motions, std::span<const std::string> scenes);

@@ -53,9 +53,11 @@ public:
         readLibrary();
         readFeatures();
         if (studyFileRead_ && libraryRead_) {
-            checkPairs(study_, library_, problems_);
-            checkLibrarySize(study_, mainMotions_.size(), problems_);
-            makeTable();
+            checkPairs(study_, library_, names_, problems_);
+            if (libraryWhole_) {
+                checkLibrarySize(study_, mainMotions_.size(), problems_);
+                makeTable();
+            }
         }
         StudyReading reading;
         if (problems_.empty())
@@ -134,8 +136,11 @@ private:
             if (names_.empty() || !scenesRead_)
                 return; // what the table says cannot be judged
             const std::size_t before = problems_.size();
-            library_ = parseLibraryFile(*content, kLibraryFile, names_, sceneNames_, problems_);
-            libraryRead_ = problems_.size() == before;
+            std::optional<Library> library =
+                parseLibraryFile(*content, kLibraryFile, names_, sceneNames_, problems_);
+            libraryRead_ = library.has_value();
+            libraryWhole_ = problems_.size() == before;
+            library_ = std::move(library).value_or(Library{});
         } else if (scenesRead_) {
             if (sceneNames_.size() > 1)
                 problems_.push_back(
@@ -145,7 +150,7 @@ private:
                      "Write library.csv with the columns trajectory, scene and role.",
                      {}});
             library_ = plainLibrary(names_, sceneNames_);
-            libraryRead_ = !names_.empty();
+            libraryRead_ = libraryWhole_ = !names_.empty();
         }
         for (const auto& [name, entry] : library_)
             if (entry.role == MotionRole::Main)
@@ -299,7 +304,8 @@ private:
     ProtocolHash hash_ = {};
 
     // What each step found, and whether it found it whole.
-    bool studyFileRead_ = false, scenesRead_ = false, libraryRead_ = false, featuresRead_ = false;
+    bool studyFileRead_ = false, scenesRead_ = false, libraryRead_ = false, libraryWhole_ = false,
+         featuresRead_ = false;
     StudyFile study_ = {};
     std::vector<Scene> scenes_ = {};
     std::vector<std::string> sceneNames_ = {};

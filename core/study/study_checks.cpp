@@ -4,6 +4,7 @@
 #include "core/files/nearest_name.h"
 #include "core/study/study_folder.h"
 
+#include <algorithm>
 #include <fmt/format.h>
 
 namespace whichway {
@@ -11,22 +12,20 @@ namespace whichway {
 namespace {
 
 void checkMotion(const std::string& name, MotionRole role, const char* roleName, const Place& place,
-                 const Library& library, std::vector<Error>& problems) {
+                 const Library& library, std::span<const std::string> motions, std::vector<Error>& problems) {
     if (name.empty())
         return; // reported where study.toml was read
     const auto found = library.find(name);
-    if (found == library.end()) {
-        std::vector<std::string> names;
-        for (const auto& [motion, entry] : library)
-            names.push_back(motion);
-        const std::string nearest = nearestName(name, names);
+    if (!std::binary_search(motions.begin(), motions.end(), name)) {
+        const std::string nearest = nearestName(name, motions);
         problems.push_back(
             {"study.unknown-motion",
              place,
              fmt::format("There is no motion “{}” in trajectories.", name),
              nearest.empty() ? "Name a motion of the library." : fmt::format("Did you mean “{}”?", nearest),
              {name}});
-    } else if (found->second.role != MotionRole::Main && found->second.role != role) {
+    } else if (found != library.end() && found->second.role != MotionRole::Main &&
+               found->second.role != role) {
         problems.push_back({"study.wrong-role",
                             place,
                             fmt::format("The motion “{}” has another role in library.csv.", name),
@@ -37,21 +36,22 @@ void checkMotion(const std::string& name, MotionRole role, const char* roleName,
 
 } // namespace
 
-void checkPairs(const StudyFile& study, const Library& library, std::vector<Error>& problems) {
+void checkPairs(const StudyFile& study, const Library& library, std::span<const std::string> motions,
+                std::vector<Error>& problems) {
     for (std::size_t i = 0; i < study.protocol.practicePairs.size(); ++i) {
         const PracticePair& pair = study.protocol.practicePairs[i];
         const std::string path = fmt::format("practice_pair.{}.", i);
         checkMotion(pair.left, MotionRole::Practice, "practice", study.places.of(path + "left"), library,
-                    problems);
+                    motions, problems);
         checkMotion(pair.right, MotionRole::Practice, "practice", study.places.of(path + "right"), library,
-                    problems);
+                    motions, problems);
     }
     for (std::size_t i = 0; i < study.protocol.catchPairs.size(); ++i) {
         const CatchPair& pair = study.protocol.catchPairs[i];
         const std::string path = fmt::format("catch_pair.{}.", i);
         checkMotion(pair.better, MotionRole::Catch, "catch", study.places.of(path + "better"), library,
-                    problems);
-        checkMotion(pair.worse, MotionRole::Catch, "catch", study.places.of(path + "worse"), library,
+                    motions, problems);
+        checkMotion(pair.worse, MotionRole::Catch, "catch", study.places.of(path + "worse"), library, motions,
                     problems);
     }
 }
@@ -69,7 +69,7 @@ void checkLibrarySize(const StudyFile& study, std::size_t mainMotions, std::vect
     const std::size_t pairs = mainMotions * (mainMotions - 1) / 2;
     const TrialSettings& trials = study.protocol.trials;
     const auto needed = static_cast<std::size_t>(trials.main + trials.heldOut);
-    if (pairs < needed)
+    if (study.countsKnown && pairs < needed)
         problems.push_back(
             {"study.too-few-motions",
              study.places.of("trials.main"),

@@ -16,7 +16,9 @@ namespace whichway {
 
 /// Practice pairs name motions of role main or practice, catch pairs of role main or catch.
 /// "study.unknown-motion", "study.wrong-role", at the name in study.toml.
-void checkPairs(const StudyFile& study, const Library& library, std::vector<Error>& problems);
+/// @param motions all that are in trajectories/, in byte order
+void checkPairs(const StudyFile& study, const Library& library, std::span<const std::string> motions,
+                std::vector<Error>& problems);
 
 /// The main library is large enough: at least two motions ("study.no-main-motions", "study.one-motion"), and
 /// a pair for each main and held-out trial ("study.too-few-motions").

@@ -126,7 +126,7 @@ void readConfidence(StudySection& section, const Protocol& protocol, Texts& text
         for (const char* key : {"sureness", "confidence"})
             if (section.has(key))
                 section.report(
-                    "study.words", section.placeOf(key),
+                    "study.words", section.keyPlaceOf(key),
                     fmt::format("With levels = 1 nobody is asked how sure they are, but “{}” is here.", key),
                     "Take it out, or set levels to 2 or more.", {key});
         return;
@@ -215,7 +215,8 @@ void readPlanning(StudySection& root, PlanningSettings& planning) {
     section.refuseUnknownKeys();
 }
 
-void readTrials(StudySection& root, TrialSettings& trials) {
+void readTrials(StudySection& root, StudyFile& study) {
+    TrialSettings& trials = study.protocol.trials;
     StudySection section = root.table("trials", Need::Optional);
     if (!section.exists())
         return;
@@ -230,6 +231,7 @@ void readTrials(StudySection& root, TrialSettings& trials) {
     trials.identical = count("identical", trials.identical, 0, 50);
     trials.breakAfter = count("break_after", trials.breakAfter, 0, 1000);
     trials.greyInterval = section.number("grey_interval_s", trials.greyInterval, 0, 10);
+    study.countsKnown = !section.isFaulty("main") && !section.isFaulty("held_out");
     if (trials.repeat > trials.heldOut && !section.isFaulty("held_out") && !section.isFaulty("repeat"))
         section.report(
             "study.repeats", section.placeOf("repeat"),
@@ -309,7 +311,7 @@ StudyFile parseStudyFile(std::string_view content, const std::string& file, std:
     Protocol& protocol = study.protocol;
     readHead(*root, study);
     readAnswers(*root, protocol);
-    readTrials(*root, protocol.trials);
+    readTrials(*root, study);
     readTexts(*root, protocol);
     protocol.features = readFeatures(*root);
     readModel(*root, protocol.model);

@@ -98,11 +98,12 @@ std::vector<std::string> StudyFolder::motionNames(std::vector<Error>& problems) 
         const std::string path = std::string(kTrajectories) + "/" + entry.name;
         if (entry.name.starts_with('.'))
             continue;
-        if (entry.kind == EntryKind::Link || entry.kind == EntryKind::Missing) {
+        const bool linked = entry.kind == EntryKind::Link;
+        if (linked && !entry.name.ends_with(kEnding)) {
             problems.push_back(problem(
                 "study.link", path, "This is a symbolic link, and links in study folders are not followed.",
                 "Put the file itself here."));
-        } else if (entry.kind != EntryKind::File || !entry.name.ends_with(kEnding)) {
+        } else if ((!linked && entry.kind != EntryKind::File) || !entry.name.ends_with(kEnding)) {
             problems.push_back(problem("study.unexpected-file", path,
                                        "Only NAME.csv files belong in trajectories.",
                                        "Move it elsewhere, or end its name in “.csv”."));

@@ -35,10 +35,10 @@ public:
     /// "study.not-a-file", "file.too-large", "study.too-large" (all files together), or the file system's
     /// reason.
     Result<std::string> read(const std::string& path);
-    /// The names, without ".csv", of the files in trajectories/, in byte order. What is wrong there is
-    /// appended to `problems`: the above, "study.name", "study.unexpected-file" (entries that are not
-    /// NAME.csv; those that begin with a dot are passed over), "study.no-motions" and
-    /// "study.too-many-motions".
+    /// The names, without ".csv", of the files in trajectories/ (and of links there, which `read` refuses),
+    /// in byte order. What is wrong there is appended to `problems`: the above, "study.name",
+    /// "study.unexpected-file" (entries that are not NAME.csv; those that begin with a dot are passed over),
+    /// "study.no-motions" and "study.too-many-motions".
     std::vector<std::string> motionNames(std::vector<Error>& problems) const;
 
 private:
