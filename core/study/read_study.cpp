@@ -47,6 +47,16 @@ public:
         : files_(files), folder_(files, folder), path_(folder), featuresFile_(featuresFile) {}
 
     StudyReading read() {
+        const EntryKind kind = files_.kind(path_);
+        if (kind == EntryKind::Missing || kind == EntryKind::File) {
+            StudyReading reading;
+            reading.problems.push_back({"study.no-folder",
+                                        {path_, 0, 0},
+                                        "There is no study folder here.",
+                                        "Name the folder that holds study.toml.",
+                                        {path_}});
+            return reading;
+        }
         readStudyFile();
         readScenes();
         readTrajectories();
