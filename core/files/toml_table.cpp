@@ -22,6 +22,7 @@ struct TomlTable::View {
     std::shared_ptr<Document> document;
     const TomlNode* table = nullptr;
     std::set<std::string> known;
+    std::set<std::string> faulty;
 
     void report(const std::string& code, const Place& at, const std::string& message,
                 const std::string& remedy, std::vector<std::string> values = {}) const {
@@ -32,25 +33,30 @@ struct TomlTable::View {
     const TomlNode* find(const std::string& key, bool required) {
         known.insert(key);
         const TomlNode* node = table->member(key);
-        if (!node && required)
+        if (!node && required) {
+            faulty.insert(key);
             report("toml.missing-key", table->place, "The key “" + key + "” is missing.",
                    "Add it to this table.", {key});
+        }
         return node;
     }
 
-    void wrongType(const std::string& key, const TomlNode& node, const std::string& wanted) const {
+    void wrongType(const std::string& key, const TomlNode& node, const std::string& wanted) {
+        faulty.insert(key);
         report("toml.type", node.place,
                "“" + key + "” is " + std::string(kindInWords(node.kind)) + ", and " + wanted + " is wanted.",
-               "", {key, wanted});
+               "Write " + wanted + " here.", {key, wanted});
     }
 
-    std::optional<double> finite(const std::string& key, const TomlNode& node) const {
+    std::optional<double> finite(const std::string& key, const TomlNode& node) {
         if (node.kind != Kind::Number && node.kind != Kind::Integer) {
             wrongType(key, node, "a number");
             return std::nullopt;
         }
         if (!std::isfinite(node.number)) {
-            report("toml.not-finite", node.place, "“" + key + "” is not a finite number.", "", {key});
+            faulty.insert(key);
+            report("toml.not-finite", node.place, "“" + key + "” is not a finite number.",
+                   "Write a finite number here.", {key});
             return std::nullopt;
         }
         return node.number;
@@ -78,6 +84,45 @@ std::optional<TomlTable> TomlTable::parse(std::string_view content, const std::s
 
 bool TomlTable::has(const std::string& key) const {
     return view_->table->member(key) != nullptr;
+}
+
+bool TomlTable::isText(const std::string& key) const {
+    const TomlNode* node = view_->table->member(key);
+    return node && node->kind == Kind::Text;
+}
+
+bool TomlTable::isList(const std::string& key) const {
+    const TomlNode* node = view_->table->member(key);
+    return node && node->kind == Kind::Array;
+}
+
+bool TomlTable::isFaulty(const std::string& key) const {
+    return view_->faulty.contains(key);
+}
+
+Place TomlTable::place() const {
+    return view_->table->place;
+}
+
+Place TomlTable::keyPlaceOf(const std::string& key) const {
+    const TomlNode* node = view_->table->member(key);
+    return node ? node->keyPlace : view_->table->place;
+}
+
+std::vector<Place> TomlTable::itemPlacesOf(const std::string& key) const {
+    std::vector<Place> places;
+    if (isList(key))
+        for (const TomlNode& item : view_->table->member(key)->items)
+            places.push_back(item.place);
+    return places;
+}
+
+void TomlTable::require(const std::string& key) {
+    view_->find(key, true);
+}
+
+void TomlTable::alsoKnows(const std::string& key) {
+    view_->known.insert(key);
 }
 
 Place TomlTable::placeOf(const std::string& key) const {
@@ -136,10 +181,9 @@ std::vector<std::string> TomlTable::texts(const std::string& key) {
         return found;
     }
     for (const TomlNode& item : list->items) {
-        if (item.kind == Kind::Text)
-            found.push_back(item.text);
-        else
+        if (item.kind != Kind::Text)
             view_->wrongType(key, item, "a text");
+        found.push_back(item.text);
     }
     return found;
 }
@@ -230,14 +274,16 @@ std::vector<std::string> TomlTable::keys() const {
 }
 
 void TomlTable::report(const std::string& code, const Place& place, const std::string& message,
-                       const std::string& remedy) {
-    view_->report(code, place, message, remedy);
+                       const std::string& remedy, std::vector<std::string> values) {
+    view_->report(code, place, message, remedy, std::move(values));
 }
 
 void TomlTable::refuseOthers() {
+    constexpr int kNamed = 50; // a table of nothing but strange keys need not be listed whole
     const std::vector<std::string> known(view_->known.begin(), view_->known.end());
+    int named = 0;
     for (const auto& [name, node] : view_->table->members) {
-        if (view_->known.contains(name))
+        if (view_->known.contains(name) || ++named > kNamed)
             continue;
         const std::string nearest = nearestName(name, known);
         view_->report("toml.unknown-key", node.keyPlace, "“" + name + "” is not a key of this table.",

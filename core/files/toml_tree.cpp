@@ -76,7 +76,10 @@ TomlNode nodeOf(const toml::node& source, const Places& places) {
     if (const toml::table* table = source.as_table()) {
         for (const auto& [key, value] : *table) {
             node.members.emplace_back(std::string(key.str()), nodeOf(value, places));
-            node.members.back().second.keyPlace = places.of(key.source().begin);
+            TomlNode& member = node.members.back().second;
+            member.keyPlace = places.of(key.source().begin);
+            if (value.is_table() && !value.as_table()->is_inline())
+                member.place = member.keyPlace;
         }
         std::stable_sort(node.members.begin(), node.members.end(), [](const auto& a, const auto& b) {
             return std::tie(a.second.keyPlace.line, a.second.keyPlace.column) <

@@ -15,7 +15,7 @@ namespace whichway {
 struct TomlNode {
     enum class Kind { Table, Array, Text, Integer, Number, Flag, Moment };
     Kind kind = Kind::Table;
-    Place place = {};    ///< of the value; of a table, of its header
+    Place place = {};    ///< of the value; of a table with a header, of its name there
     Place keyPlace = {}; ///< of its key, where it has one
     std::string text = {};
     std::int64_t integer = 0;

@@ -69,7 +69,7 @@ void checkLibrarySize(const StudyFile& study, std::size_t mainMotions, std::vect
     const std::size_t pairs = mainMotions * (mainMotions - 1) / 2;
     const TrialSettings& trials = study.protocol.trials;
     const auto needed = static_cast<std::size_t>(trials.main + trials.heldOut);
-    if (study.countsKnown && pairs < needed)
+    if (pairs < needed)
         problems.push_back(
             {"study.too-few-motions",
              study.places.of("trials.main"),

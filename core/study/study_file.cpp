@@ -29,7 +29,7 @@ std::string readText(StudySection& section, const std::string& key, Need need) {
 std::vector<std::string> readTextList(StudySection& section, const std::string& key, Need need) {
     std::vector<Place> places;
     std::vector<std::string> texts = section.textList(key, need, places);
-    for (std::size_t i = 0; i < texts.size(); ++i)
+    for (std::size_t i = 0; i < texts.size() && !section.isFaulty(key); ++i)
         section.checkText(texts[i], places[i]);
     return texts;
 }
@@ -185,7 +185,8 @@ void readTexts(StudySection& root, Protocol& protocol) {
         texts.practiceEnds = readText(section, "practice_ends", needIf(protocol.trials.practice > 0));
         texts.breakText = readText(section, "break", needIf(protocol.trials.breakAfter > 0));
         texts.end = readText(section, "end", Need::Required);
-        section.alsoKnows({"sureness", "confidence"});
+        section.alsoKnows("sureness");
+        section.alsoKnows("confidence");
         section.refuseUnknownKeys();
         protocol.texts.push_back(std::move(texts));
     }
@@ -215,23 +216,21 @@ void readPlanning(StudySection& root, PlanningSettings& planning) {
     section.refuseUnknownKeys();
 }
 
-void readTrials(StudySection& root, StudyFile& study) {
-    TrialSettings& trials = study.protocol.trials;
+void readTrials(StudySection& root, TrialSettings& trials) {
     StudySection section = root.table("trials", Need::Optional);
     if (!section.exists())
         return;
-    const auto count = [&](const char* key, int standard, int low, int high) {
+    const auto countOf = [&](const char* key, int standard, int low, int high) {
         return static_cast<int>(section.integer(key, Need::Optional, standard, low, high));
     };
-    trials.practice = count("practice", trials.practice, 0, 50);
-    trials.main = count("main", trials.main, 1, 1000);
-    trials.heldOut = count("held_out", trials.heldOut, 0, 500);
-    trials.repeat = count("repeat", trials.repeat, 0, 500);
-    trials.catchTrials = count("catch", trials.catchTrials, 0, 50);
-    trials.identical = count("identical", trials.identical, 0, 50);
-    trials.breakAfter = count("break_after", trials.breakAfter, 0, 1000);
+    trials.practice = countOf("practice", trials.practice, 0, 50);
+    trials.main = countOf("main", trials.main, 1, 1000);
+    trials.heldOut = countOf("held_out", trials.heldOut, 0, 500);
+    trials.repeat = countOf("repeat", trials.repeat, 0, 500);
+    trials.catchTrials = countOf("catch", trials.catchTrials, 0, 50);
+    trials.identical = countOf("identical", trials.identical, 0, 50);
+    trials.breakAfter = countOf("break_after", trials.breakAfter, 0, 1000);
     trials.greyInterval = section.number("grey_interval_s", trials.greyInterval, 0, 10);
-    study.countsKnown = !section.isFaulty("main") && !section.isFaulty("held_out");
     if (trials.repeat > trials.heldOut && !section.isFaulty("held_out") && !section.isFaulty("repeat"))
         section.report(
             "study.repeats", section.placeOf("repeat"),
@@ -240,6 +239,12 @@ void readTrials(StudySection& root, StudyFile& study) {
                         trials.repeat, trials.heldOut),
             "Raise held_out or lower repeat.",
             {std::to_string(trials.repeat), std::to_string(trials.heldOut)});
+    // What is at fault needs nothing else to go with it.
+    for (const auto& [key, count] :
+         {std::pair("practice", &trials.practice), std::pair("main", &trials.main),
+          std::pair("held_out", &trials.heldOut), std::pair("catch", &trials.catchTrials)})
+        if (section.isFaulty(key))
+            *count = 0;
     section.refuseUnknownKeys();
 }
 
@@ -262,8 +267,7 @@ readPairs(StudySection& root, const std::string& key, const char* first, const c
         section.refuseUnknownKeys();
     }
     const std::string trials = key == "practice_pair" ? "practice" : "catch";
-    if (pairs.size() < static_cast<std::size_t>(needed) && !root.isFaulty(key) &&
-        !root.isFaulty("trials." + trials))
+    if (pairs.size() < static_cast<std::size_t>(needed) && !root.isFaulty(key))
         root.report("study.too-few-pairs", root.placeOf("trials." + trials),
                     fmt::format("{} {} trials are asked for, but there are {} tables [[{}]].", needed, trials,
                                 pairs.size(), key),
@@ -311,7 +315,7 @@ StudyFile parseStudyFile(std::string_view content, const std::string& file, std:
     Protocol& protocol = study.protocol;
     readHead(*root, study);
     readAnswers(*root, protocol);
-    readTrials(*root, study);
+    readTrials(*root, protocol.trials);
     readTexts(*root, protocol);
     protocol.features = readFeatures(*root);
     readModel(*root, protocol.model);

@@ -25,8 +25,7 @@ private:
 
 /// What study.toml says, before motions and tables are looked at.
 struct StudyFile {
-    bool isToml = false;     ///< false: nothing could be read
-    bool countsKnown = true; ///< false: the numbers of main or held-out trials are at fault
+    bool isToml = false; ///< false: nothing could be read
     /// All but `hash`, `table` and `scenes`.
     Protocol protocol = {};
     std::vector<std::string> scenePaths = {}; ///< as written, checked to be plain relative paths

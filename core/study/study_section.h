@@ -1,22 +1,21 @@
 // SPDX-License-Identifier: GPL-3.0-or-later
 #pragma once
 
-#include "core/files/toml_tree.h"
+#include "core/files/toml_table.h"
 #include "core/result.h"
 #include "core/study/study_file.h"
 
-#include <initializer_list>
-#include <memory>
 #include <optional>
+#include <set>
 #include <string>
 #include <string_view>
 #include <vector>
 
 namespace whichway {
 
-/// One table of study.toml while it is read: each question says what is expected of a key, answers with a
-/// usable value in any case, and reports what is wrong. What was never asked for is an unknown key in the
-/// end. The places and problems that `parse` was given must outlive all sections.
+/// One table of study.toml while it is read: a TomlTable whose questions know ranges and phrases, always give
+/// a usable value, and note where each value stands. The places and problems that `parse` was given must
+/// outlive all sections.
 class StudySection {
 public:
     enum class Need { Optional, Required };
@@ -25,12 +24,12 @@ public:
     static std::optional<StudySection> parse(std::string_view content, const std::string& file,
                                              StudyPlaces& places, std::vector<Error>& problems);
 
-    bool exists() const { return node_ != nullptr; } ///< false: the table was not there or no table
-    bool has(std::string_view key) const;
-    bool isText(std::string_view key) const;
-    bool isList(std::string_view key) const;
-    /// Whether a problem was reported at the value of the dotted path below this table.
-    bool isFaulty(const std::string& path) const;
+    bool exists() const { return table_.has_value(); } ///< false: the table was not there or no table
+    bool has(const std::string& key) const { return exists() && table_->has(key); }
+    bool isText(const std::string& key) const { return exists() && table_->isText(key); }
+    bool isList(const std::string& key) const { return exists() && table_->isList(key); }
+    /// Whether a question about `key` reported something.
+    bool isFaulty(const std::string& key) const;
     Place place() const { return placeOf(""); }
     /// Of a dotted path below this table; of the nearest table around it where it is absent.
     Place placeOf(const std::string& path) const;
@@ -41,7 +40,7 @@ public:
     std::vector<std::string> textList(const std::string& key, Need need, std::vector<Place>& places);
     /// `standard` where the key is absent or no whole number from `low` to `high` (reported).
     long long integer(const std::string& key, Need need, long long standard, long long low, long long high);
-    /// `standard` where the key is absent or no finite number from `low` to `high` (reported).
+    /// `standard` where the key is absent or no number from `low` to `high` (reported).
     double number(const std::string& key, double standard, double low, double high);
     bool flag(const std::string& key, bool standard);
     /// Index of the phrase that stands there; 0 where the key is absent or says something else (reported).
@@ -54,22 +53,23 @@ public:
     void checkText(const std::string& key);
     void checkText(const std::string& text, const Place& place);
 
-    void alsoKnows(std::initializer_list<std::string_view> keys);
+    void alsoKnows(const std::string& key);
     void refuseUnknownKeys();
     void report(const std::string& code, const Place& place, std::string message, std::string remedy,
                 std::vector<std::string> values = {});
 
 private:
-    struct Reading; ///< what all sections of a file share
-    StudySection(std::shared_ptr<Reading> reading, const TomlNode* node, std::string path);
-    const TomlNode* find(const std::string& key, Need need);
-    void reportKind(const std::string& key, const TomlNode& node, const char* wanted);
+    StudySection(std::optional<TomlTable> table, StudyPlaces& places, std::vector<Error>& problems,
+                 std::string path);
+    /// Notes the place of `key`, and reports it if it is needed and absent. @return whether it is there
+    bool look(const std::string& key, Need need);
     std::string pathOf(const std::string& key) const;
 
-    std::shared_ptr<Reading> reading_;
-    const TomlNode* node_ = nullptr;
-    std::string path_ = {};
-    std::vector<std::string> known_ = {};
+    std::optional<TomlTable> table_;
+    StudyPlaces* places_;
+    std::vector<Error>* problems_;
+    std::string path_;
+    std::set<std::string> outOfRange_ = {};
 };
 
 } // namespace whichway

@@ -143,7 +143,7 @@ const Fault kFaults[] = {
     {"UnknownNumeraire", toml("numeraire = \"duration\"", "numeraire = \"duratoin\""), "study.numeraire",
      "study.toml:6:13"},
     {"LapseTooLarge", toml("0.05", "0.25"), "study.range", "study.toml:36:9"},
-    {"LapseNotANumber", toml("0.05", "nan"), "study.range", "study.toml:36:9"},
+    {"LapseNotANumber", toml("0.05", "nan"), "toml.not-finite", "study.toml:36:9"},
     {"LapseNegative", toml("0.05", "-0.01"), "study.range", "study.toml:36:9"},
     {"UnknownWeightScale", toml("\"hierarchical\"", "\"free\""), "study.choice", "study.toml:37:9"},
     {"UnknownSchedule", toml("\"rolling\"", "\"rollign\""), "study.choice", "study.toml:41:12"},
