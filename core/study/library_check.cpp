@@ -81,9 +81,11 @@ void checkInflation(const Subject& subject) {
                       "{} nearly follows from the other features: its variance inflation factor is {:.1f}.",
                       quoted(subject.features()[j].label), inflation);
         finding.effect =
-            fmt::format("Its weight is known {} less precisely than if the features varied freely.",
-                        std::isinf(inflation) ? std::string("infinitely")
-                                              : fmt::format("{:.1f} times", std::sqrt(inflation)));
+            std::isinf(inflation)
+                ? "Its weight cannot be told from theirs at all."
+                : fmt::format("Its weight is known {:.1f} times less precisely than if the features "
+                              "varied freely.",
+                              std::sqrt(inflation));
         finding.remedy = "Leave one of the features that move together out, or add motions that part them.";
         finding.features = {subject.features()[j].name};
         finding.count = 1;
@@ -103,10 +105,8 @@ void checkAlmostConstant(const Subject& subject) {
             finding.value = spread.mostSharedPart;
         } else if (spread.deviation < subject.limits.relativeDeviation * std::fabs(spread.mean)) {
             finding.message =
-                fmt::format("{} hardly varies: {:.4g} ± {:.2g} {}.", quoted(feature.label), spread.mean,
-                            spread.deviation, feature.unit == "1" ? "" : feature.unit);
-            if (feature.unit == "1")
-                finding.message.erase(finding.message.size() - 2, 1);
+                fmt::format("{} hardly varies: {:.4g} ± {:.2g}{}.", quoted(feature.label), spread.mean,
+                            spread.deviation, feature.unit == "1" ? "" : " " + feature.unit);
             finding.value = spread.deviation / std::fabs(spread.mean);
         } else {
             continue;
@@ -182,7 +182,7 @@ void checkNearDuplicates(const Subject& subject) {
                 squared += (z(a, j) - z(b, j)) * (z(a, j) - z(b, j));
             if (squared >= limit)
                 continue;
-            nameMotion(finding, subject.table().motions[a] + " = " + subject.table().motions[b]);
+            nameMotion(finding, subject.table().motions[a] + " ≈ " + subject.table().motions[b]);
             closest = std::min(closest, squared);
         }
     if (finding.count == 0)

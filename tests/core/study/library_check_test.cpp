@@ -125,7 +125,7 @@ TEST(LibraryCheck, NamesMotionsThatNearlyDuplicateEachOther) {
         study.protocol.table.raw(30, j) = study.protocol.table.raw(3, j);
     const auto findings = findingsOf(study);
     ASSERT_THAT(codesOf(findings), ElementsAre("library.near-duplicates"));
-    EXPECT_THAT(findings[0].motions, testing::Contains("m3 = m30"));
+    EXPECT_THAT(findings[0].motions, testing::Contains("m3 ≈ m30"));
     EXPECT_EQ(findings[0].value, 0);
 }
 
