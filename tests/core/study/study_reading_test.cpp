@@ -32,6 +32,55 @@ TEST(StudyReading, ReadsTheSoundStudyThatTheOthersSpoil) {
     EXPECT_EQ(protocol.hash.size(), 64u);
 }
 
+/// A person stands at (0, 2); the motions go straight along x, m1 the farthest.
+TinyStudy studyWithAPerson() {
+    TinyStudy study;
+    toml("unit = \"s\"\nmeasure = \"travel time\"",
+         "unit = \"m\"\nmeasure = \"closest distance to a person\"\nsettings = { person_radius = 0.5 }")(
+        study);
+    toml("invented = true", "scenes = [\"scenes/room.toml\"]")(study);
+    study.files["scenes/room.toml"] =
+        "name = \"room\"\nbounds = [0, 0, 4, 3]\n"
+        "robot = { length = 0.5, width = 0.4, radius = 0.3 }\nperson_radius = 0.25\n";
+    for (int i = 1; i <= 6; ++i)
+        study.files[fmt::format("trajectories/m{}.csv", i)] =
+            fmt::format("time_s,x_m,y_m,person1_x_m,person1_y_m\n0,0,{0},0,2\n1,1,{0},0,2\n", 0.1 * i);
+    return study;
+}
+
+TEST(StudyReading, MeasuresInTheSceneAndWithTheSettingsOfTheStudy) {
+    const StudyReading reading = readBack(studyWithAPerson(), "person");
+    ASSERT_TRUE(reading.ok()) << codesAndPlaces(reading.problems);
+    const Study& study = reading.study;
+    // The robot's radius is the scene's, the person's the setting's.
+    for (std::size_t i = 0; i < 6; ++i)
+        EXPECT_NEAR(study.protocol.table.raw(i, 0), 2 - 0.1 * static_cast<double>(i + 1) - 0.3 - 0.5, 1e-12);
+    ASSERT_NE(study.sceneOf(study.motions.front()), nullptr);
+    EXPECT_EQ(study.sceneOf(study.motions.front())->robotRadius, 0.3);
+    EXPECT_EQ(study.motions.back().scene, "room");
+
+    TinyStudy other = studyWithAPerson();
+    other.files["scenes/room.toml"] += "# another remark\n";
+    EXPECT_NE(readBack(other, "person_hash").study.protocol.hash, study.protocol.hash);
+}
+
+TEST(StudyReading, ReportsEveryMotionThatAMeasureIsNotDefinedFor) {
+    TinyStudy study = studyWithAPerson();
+    study.files["trajectories/m2.csv"] = study.files["trajectories/m5.csv"] = TinyStudy::trajectory(4);
+    const StudyReading reading = readBack(study, "nobody_there");
+    ASSERT_EQ(reading.problems.size(), 2u) << codesAndPlaces(reading.problems);
+    for (const Error& problem : reading.problems)
+        EXPECT_EQ(problem.code, "measure.undefined");
+    EXPECT_EQ(reading.problems[0].place.file, "trajectories/m2.csv");
+    EXPECT_EQ(reading.problems[1].place.file, "trajectories/m5.csv");
+}
+
+TEST(StudyReading, SaysWhenThereIsNoFolder) {
+    const StudyReading reading = readStudy(RealFileSystem(), "/nowhere/at/all");
+    ASSERT_EQ(reading.problems.size(), 1u);
+    EXPECT_EQ(reading.problems.front().code, "study.no-folder");
+}
+
 TEST(StudyReading, AcceptsByteOrderMarksAndCarriageReturns) {
     TinyStudy study;
     for (auto& [path, content] : study.files) {
