@@ -45,8 +45,9 @@ public:
     const T& value() const& { return std::get<0>(content_); }
     T& value() & { return std::get<0>(content_); }
     T&& value() && { return std::get<0>(std::move(content_)); }
-    const T& operator*() const { return value(); }
-    T& operator*() { return value(); }
+    const T& operator*() const& { return value(); }
+    T& operator*() & { return value(); }
+    T operator*() && { return std::get<0>(std::move(content_)); } ///< by value: safe in `for (x : *make())`
     const T* operator->() const { return &value(); }
     T* operator->() { return &value(); }
 
