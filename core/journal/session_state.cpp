@@ -2,7 +2,6 @@
 #include "core/journal/session_state.h"
 
 #include <algorithm>
-#include <cstdlib>
 
 namespace whichway {
 namespace {
@@ -84,7 +83,7 @@ public:
     void operator()(const AnswerGiven& given) {
         if (!running() || !require(!s_.paused, "the session is paused") ||
             !require(s_.onStage && s_.onStage->trial == given.trial, "that trial is not on the stage") ||
-            !require(std::abs(given.answer) <= s_.began.protocol.levels &&
+            !require(given.answer >= -s_.began.protocol.levels && given.answer <= s_.began.protocol.levels &&
                          (given.answer != 0 || s_.began.protocol.cannotTell),
                      "the study has no such answer"))
             return;
