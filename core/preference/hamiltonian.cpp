@@ -37,11 +37,11 @@ double HamiltonianChain::evaluate(std::span<const double> whitened, std::span<do
         trialPosition_[i] = sum;
     }
     const double value = density_(trialPosition_, slope_);
-    for (std::size_t j = 0; j < p; ++j) {
-        double sum = 0;
-        for (std::size_t i = j; i < p; ++i)
-            sum += factor_(i, j) * slope_[i];
-        gradient[j] = sum;
+    std::fill(gradient.begin(), gradient.end(), 0.0);
+    for (std::size_t i = 0; i < p; ++i) {
+        const double slope = slope_[i];
+        for (std::size_t j = 0; j <= i; ++j)
+            gradient[j] += factor_(i, j) * slope;
     }
     return value;
 }

@@ -2,6 +2,7 @@
 #include "core/preference/likelihood.h"
 
 #include "core/numbers/exp_log.h"
+#include "core/numbers/special_functions.h"
 
 #include <algorithm>
 #include <cmath>
@@ -10,117 +11,214 @@
 namespace whichway {
 namespace {
 
-/// Stands for an infinite cut point: e^-kBeyond is as good as 0 and nothing overflows.
-constexpr double kBeyond = 1e4;
-constexpr double kSmallestProbability = 1e-300;
+constexpr double kSmallestGap = 1e-300;
 
-double logisticOf(double x) {
-    const double t = exactExp(x < 0 ? x : -x);
-    return (x < 0 ? t : 1.0) / (1.0 + t);
+/// 1 - e^-g without cancellation.
+double oneMinusExp(double g) {
+    if (g > 0.02)
+        return 1.0 - exactExp(-g);
+    return g * (1 - g / 2 * (1 - g / 3 * (1 - g / 4 * (1 - g / 5 * (1 - g / 6)))));
+}
+
+/// What the answers of one level share, and the rows that they read and write.
+struct Rows {
+    const double* eta;
+    double *up, *down, *share, *factor;
+    double lower, upper, between, floorPart, kept;
+};
+
+// With a = x - lower, b = x - upper: P_ord = S(a) - S(b) = S(a) S(-b) (1 - e^-g), which does not cancel, and
+//     d ln P_ord / da = S(-a) + s,  d ln P_ord / db = -(S(b) + s),  s = d ln(1 - e^-g) / d g.
+// A lapse multiplies both by the share of P_ord in P. `factor` is P, or without a lapse 1 / ((1 + e^-|a|)(1 +
+// e^-|b|)), which lacks an exponential that is added as a logarithm.
+template <bool kMixture, bool kLast>
+void evaluateLevel(const Rows& rows, std::size_t begin, std::size_t end) {
+    const double* const __restrict eta = rows.eta;
+    double* const __restrict up = rows.up;
+    double* const __restrict down = rows.down;
+    double* const __restrict share = rows.share;
+    double* const __restrict factor = rows.factor;
+    const double lower = rows.lower, upper = rows.upper, floorPart = rows.floorPart;
+    const double scale = rows.kept * rows.between;
+    for (std::size_t i = begin; i < end; ++i) {
+        const double a = eta[i] - lower;
+        const double ta = exactExp(-std::abs(a));
+        const double ia = 1.0 / (1.0 + ta);
+        const double sa = (a < 0 ? ta : 1.0) * ia;
+        const double notA = (a < 0 ? 1.0 : ta) * ia;
+        double sb = 0, notB = 1, ib = 1;
+        if constexpr (!kLast) {
+            const double b = eta[i] - upper;
+            const double tb = exactExp(-std::abs(b));
+            ib = 1.0 / (1.0 + tb);
+            sb = (b < 0 ? tb : 1.0) * ib;
+            notB = (b < 0 ? 1.0 : tb) * ib;
+        }
+        if constexpr (kMixture) {
+            const double ordinal = scale * sa * notB;
+            const double p = floorPart + ordinal;
+            const double r = ordinal / p;
+            factor[i] = p;
+            share[i] = r;
+            up[i] = r * notA;
+            down[i] = r * sb;
+        } else {
+            factor[i] = ia * ib;
+            share[i] = 1.0;
+            up[i] = notA;
+            down[i] = sb;
+        }
+    }
+}
+
+struct LevelSums {
+    double up = 0, down = 0, share = 0;
+};
+
+LevelSums sumLevel(const Rows& rows, std::size_t begin, std::size_t end) {
+    LevelSums sums; // three sums in one loop: none waits for another
+    for (std::size_t i = begin; i < end; ++i) {
+        sums.up += rows.up[i];
+        sums.down += rows.down[i];
+        sums.share += rows.share[i];
+    }
+    return sums;
+}
+
+/// Four sums side by side, so that the order is the same with and without vector instructions.
+double dotByFours(const double* __restrict a, const double* __restrict b, std::size_t size) {
+    double sums[4] = {0, 0, 0, 0};
+    for (std::size_t i = 0; i < size; i += 4)
+        for (std::size_t k = 0; k < 4; ++k)
+            sums[k] += a[i + k] * b[i + k];
+    return (sums[0] + sums[1]) + (sums[2] + sums[3]);
 }
 
 } // namespace
 
 ResponseLikelihood::ResponseLikelihood(const ResponseModel& model, std::span<const Response> responses)
-    : model_(model), count_(responses.size()) {
-    if (model.dimension < 1 || model.levels < 1 || model.levels > 7 ||
-        !(model.lapse >= 0 && model.lapse <= 0.2))
-        throw std::invalid_argument("ResponseLikelihood: the model is out of range");
+    : model_(model), count_(responses.size()), stride_((responses.size() + 3) / 4 * 4) {
+    requireSound(model);
     const auto d = static_cast<std::size_t>(model.dimension), k = static_cast<std::size_t>(model.levels);
-    signed_.resize((d + 1) * count_);
-    byResponse_.resize((d + 1) * count_);
-    for (std::size_t i = 0; i < count_; ++i) {
-        const Response& response = responses[i];
-        const auto level = static_cast<std::size_t>(std::abs(response.answer));
-        if (response.difference.size() != d || level > k || (level == 0 && !model.cannotTell))
+    for (const Response& response : responses) {
+        const int level = std::abs(response.answer);
+        if (response.difference.size() != d || level > model.levels || (level == 0 && !model.cannotTell))
             throw std::invalid_argument("ResponseLikelihood: a response does not fit the model");
-        const double side = response.answer < 0 ? -1.0 : 1.0;
-        for (std::size_t j = 0; j <= d; ++j) {
-            const double value = j < d ? response.difference[j] : 1.0;
-            if (!std::isfinite(value))
-                throw std::invalid_argument("ResponseLikelihood: a difference is not finite");
-            signed_[j * count_ + i] = byResponse_[i * (d + 1) + j] = side * value;
-        }
-        // Extended cuts: c_0 … c_{K-1}, "beyond" at K, -c_0 at K + 1. "Cannot tell" lies between -c_0 and
-        // c_0.
-        lowerCut_.push_back(level == 0 ? k + 1 : level - 1);
-        upperCut_.push_back(level == 0 ? 0 : level);
+        if (!std::all_of(response.difference.begin(), response.difference.end(),
+                         [](double value) { return std::isfinite(value); }))
+            throw std::invalid_argument("ResponseLikelihood: a difference is not finite");
     }
-    const double least = model.lapse / model.categories();
-    perLog_ = least > 1e-6 ? 32 : 1;
+    signed_.resize((d + 1) * stride_);
+    std::size_t next = 0;
+    for (std::size_t level = 0; level <= k; ++level) {
+        Group group{.level = level, .begin = next};
+        for (const Response& response : responses) {
+            if (static_cast<std::size_t>(std::abs(response.answer)) != level)
+                continue;
+            const double side = response.answer < 0 ? -1.0 : 1.0;
+            for (std::size_t j = 0; j < d; ++j)
+                signed_[j * stride_ + next] = side * response.difference[j];
+            signed_[d * stride_ + next++] = side;
+        }
+        group.end = next;
+        if (group.end > group.begin)
+            groups_.push_back(group);
+    }
+    floorPart_ = model.lapse / model.categories();
+    kept_ = 1.0 - model.lapse;
+    mixture_ = floorPart_ > 1e-250; // less is not to be told from none
+    if (mixture_ && floorPart_ < 1e-9)
+        perLog_ = 1;
+}
+
+ResponseLikelihood::Step ResponseLikelihood::stepOf(std::size_t level, std::span<const double> cuts) const {
+    Step step;
+    if (level == 0) {
+        step.upper = cuts[0];
+        step.lower = -cuts[0];
+    } else {
+        step.lower = cuts[level - 1];
+        if (isLast(level))
+            return step;
+        step.upper = cuts[level];
+    }
+    const double gap = std::max(step.upper - step.lower, kSmallestGap);
+    step.between = oneMinusExp(gap);
+    step.slope = exactExp(-gap) / step.between;
+    return step;
 }
 
 double ResponseLikelihood::evaluate(std::span<const double> natural, std::span<double> gradient,
                                     Scratch& scratch) const {
     const auto d = static_cast<std::size_t>(model_.dimension), k = static_cast<std::size_t>(model_.levels);
-    const std::size_t n = count_;
-    const double* const cuts = natural.data() + d + 1;
-    double extended[9];
-    for (std::size_t j = 0; j < k; ++j)
-        extended[j] = cuts[j];
-    extended[k] = kBeyond;
-    extended[k + 1] = -cuts[0];
-
     for (auto* list :
-         {&scratch.upper, &scratch.lower, &scratch.slopeUpper, &scratch.slopeLower, &scratch.probability})
-        list->resize(n);
-    double* const a = scratch.upper.data();
-    double* const b = scratch.lower.data();
-    double* const slopeA = scratch.slopeUpper.data();
-    double* const slopeB = scratch.slopeLower.data();
-    double* const p = scratch.probability.data();
-
-    std::fill(a, a + n, 0.0);
+         {&scratch.eta, &scratch.up, &scratch.down, &scratch.share, &scratch.factor, &scratch.slope})
+        list->resize(stride_);
+    double* const __restrict eta = scratch.eta.data();
+    std::fill(eta, eta + stride_, 0.0);
     for (std::size_t j = 0; j <= d; ++j) {
-        const double* const column = signed_.data() + j * n;
+        const double* const __restrict column = signed_.data() + j * stride_;
         const double weight = natural[j];
-        for (std::size_t i = 0; i < n; ++i)
-            a[i] += weight * column[i];
-    }
-    for (std::size_t i = 0; i < n; ++i) {
-        b[i] = a[i] - extended[upperCut_[i]];
-        a[i] -= extended[lowerCut_[i]];
-    }
-
-    // P_ord = S(a) - S(b) = S(a) S(-b) (1 - e^(b-a)), which does not cancel.
-    const double floorPart = model_.lapse / model_.categories();
-    const double kept = 1.0 - model_.lapse;
-    for (std::size_t i = 0; i < n; ++i) {
-        const double ta = exactExp(a[i] < 0 ? a[i] : -a[i]);
-        const double tb = exactExp(b[i] < 0 ? b[i] : -b[i]);
-        const double ia = 1.0 / (1.0 + ta);
-        const double ib = 1.0 / (1.0 + tb);
-        const double sa = (a[i] < 0 ? ta : 1.0) * ia;
-        const double sbComplement = (b[i] < 0 ? 1.0 : tb) * ib;
-        const double between = 1.0 - exactExp(b[i] - a[i]);
-        const double ordinal = sa * sbComplement * between;
-        const double total = floorPart + kept * ordinal;
-        p[i] = total < kSmallestProbability ? kSmallestProbability : total;
-        slopeA[i] = kept * ta * ia * ia / p[i];
-        slopeB[i] = kept * tb * ib * ib / p[i];
+        for (std::size_t i = 0; i < stride_; ++i)
+            eta[i] += weight * column[i];
     }
 
     double logLikelihood = 0;
-    for (std::size_t i = 0; i < n;) {
+    std::fill(gradient.begin(), gradient.end(), 0.0);
+    const std::span<const double> cuts = natural.subspan(d + 1, k);
+    for (const Group& group : groups_) {
+        const Step step = stepOf(group.level, cuts);
+        const bool last = isLast(group.level);
+        const Rows rows{.eta = eta,
+                        .up = scratch.up.data(),
+                        .down = scratch.down.data(),
+                        .share = scratch.share.data(),
+                        .factor = scratch.factor.data(),
+                        .lower = step.lower,
+                        .upper = step.upper,
+                        .between = step.between,
+                        .floorPart = floorPart_,
+                        .kept = kept_};
+        if (mixture_)
+            last ? evaluateLevel<true, true>(rows, group.begin, group.end)
+                 : evaluateLevel<true, false>(rows, group.begin, group.end);
+        else
+            last ? evaluateLevel<false, true>(rows, group.begin, group.end)
+                 : evaluateLevel<false, false>(rows, group.begin, group.end);
+        if (!mixture_) {
+            for (std::size_t i = group.begin; i < group.end; ++i) {
+                logLikelihood += std::min(eta[i] - step.lower, 0.0);
+                if (!last)
+                    logLikelihood -= std::max(eta[i] - step.upper, 0.0);
+            }
+            if (!last)
+                logLikelihood += static_cast<double>(group.end - group.begin) * exactLog(step.between);
+        }
+
+        const LevelSums sums = sumLevel(rows, group.begin, group.end);
+        const double shared = step.slope * sums.share;
+        if (group.level > 0)
+            gradient[d + group.level] -= sums.up + shared;
+        else // -c_0 is the lower cut of "cannot tell"
+            gradient[d + 1] += sums.up + shared;
+        if (!last)
+            gradient[d + 1 + group.level] += sums.down + shared;
+    }
+
+    const double* const factor = scratch.factor.data();
+    for (std::size_t i = 0; i < count_;) {
         double product = 1;
-        for (const std::size_t end = std::min(n, i + perLog_); i < end; ++i)
-            product *= p[i];
+        for (const std::size_t end = std::min(count_, i + perLog_); i < end; ++i)
+            product *= factor[i];
         logLikelihood += exactLog(product);
     }
 
-    double cutSlopes[9] = {};
-    std::fill(gradient.begin(), gradient.end(), 0.0);
-    for (std::size_t i = 0; i < n; ++i) {
-        const double slope = slopeA[i] - slopeB[i];
-        const double* const row = byResponse_.data() + i * (d + 1);
-        for (std::size_t j = 0; j <= d; ++j)
-            gradient[j] += slope * row[j];
-        cutSlopes[lowerCut_[i]] -= slopeA[i];
-        cutSlopes[upperCut_[i]] += slopeB[i];
-    }
-    for (std::size_t j = 0; j < k; ++j)
-        gradient[d + 1 + j] = cutSlopes[j];
-    gradient[d + 1] -= cutSlopes[k + 1];
+    double* const slope = scratch.slope.data();
+    for (std::size_t i = 0; i < count_; ++i)
+        slope[i] = scratch.up[i] - scratch.down[i];
+    std::fill(slope + count_, slope + stride_, 0.0);
+    for (std::size_t j = 0; j <= d; ++j)
+        gradient[j] = dotByFours(slope, signed_.data() + j * stride_, stride_);
     return logLikelihood;
 }
 
@@ -129,52 +227,52 @@ Matrix ResponseLikelihood::expectedInformation(std::span<const double> natural) 
     const std::size_t size = parameters();
     Matrix information(size, size);
     const double* const cuts = natural.data() + d + 1;
-    const double kept = 1.0 - model_.lapse;
-    const double floorPart = model_.lapse / model_.categories();
-    std::vector<double> steps(
-        k); // S(|eta| side): probability of at least level j + 1 on one side, and its slope
     Matrix small(k + 1, k + 1); // information of (eta, c_0 … c_{K-1}) in one answer
-    std::vector<double> change(k + 1);
+    std::vector<double> row(d + 1), above(k + 1), change(k + 1);
+    above[k] = 0;
 
     for (std::size_t i = 0; i < count_; ++i) {
-        const double* const row = byResponse_.data() + i * (d + 1);
-        const double side = row[d];
+        const double side = signed_[d * stride_ + i];
         double eta = 0;
-        for (std::size_t j = 0; j <= d; ++j)
-            eta += natural[j] * row[j] * side;
+        for (std::size_t j = 0; j <= d; ++j) {
+            row[j] = side * signed_[j * stride_ + i];
+            eta += natural[j] * row[j];
+        }
         std::fill(small.values.begin(), small.values.end(), 0.0);
-        const auto add = [&](double probability) {
-            const double p = std::max(floorPart + kept * probability, 1e-12);
-            for (std::size_t r = 0; r <= k; ++r)
-                for (std::size_t c = 0; c <= k; ++c)
-                    small(r, c) += kept * kept * change[r] * change[c] / p;
+        // P_ord of a category moves with eta, with the cut `first` and the next one.
+        const auto add = [&](double probability, std::size_t first, bool two) {
+            const double weight = kept_ * kept_ / std::max(floorPart_ + kept_ * probability, 1e-12);
+            const std::size_t moved[3] = {0, first, first + 1};
+            for (std::size_t r = 0; r < (two ? 3u : 2u); ++r)
+                for (std::size_t c = 0; c <= r; ++c)
+                    small(moved[r], moved[c]) += weight * change[moved[r]] * change[moved[c]];
         };
         for (const double sign : {1.0, -1.0}) {
+            for (std::size_t level = 0; level < k; ++level)
+                above[level] = logistic(sign * eta - cuts[level]); // at least level + 1 on this side
             for (std::size_t level = 0; level < k; ++level) {
-                const double s = logisticOf(sign * eta - cuts[level]);
-                const bool last = level + 1 == k;
-                const double next = last ? 0.0 : logisticOf(sign * eta - cuts[level + 1]);
-                std::fill(change.begin(), change.end(), 0.0);
-                change[0] = sign * (s * (1 - s) - next * (1 - next));
-                change[1 + level] = -s * (1 - s);
-                if (!last)
-                    change[2 + level] = next * (1 - next);
-                add(s - next);
+                const double s = above[level] * (1 - above[level]);
+                const double next = above[level + 1] * (1 - above[level + 1]);
+                const bool two = level + 1 < k;
+                change[0] = sign * (s - next);
+                change[1 + level] = -s;
+                if (two)
+                    change[2 + level] = next;
+                add(above[level] - above[level + 1], 1 + level, two);
             }
         }
         if (model_.cannotTell) {
-            const double high = logisticOf(eta + cuts[0]), low = logisticOf(eta - cuts[0]);
-            std::fill(change.begin(), change.end(), 0.0);
+            const double high = logistic(eta + cuts[0]), low = logistic(eta - cuts[0]);
             change[0] = high * (1 - high) - low * (1 - low);
             change[1] = high * (1 - high) + low * (1 - low);
-            add(high - low);
+            add(high - low, 1, false);
         }
         for (std::size_t r = 0; r <= d; ++r) {
-            const double x = row[r] * side;
+            const double scaled = small(0, 0) * row[r];
             for (std::size_t c = 0; c <= r; ++c)
-                information(r, c) += small(0, 0) * x * row[c] * side;
+                information(r, c) += scaled * row[c];
             for (std::size_t c = 0; c < k; ++c)
-                information(d + 1 + c, r) += small(0, 1 + c) * x;
+                information(d + 1 + c, r) += small(1 + c, 0) * row[r];
         }
         for (std::size_t r = 0; r < k; ++r)
             for (std::size_t c = 0; c <= r; ++c)
@@ -183,6 +281,51 @@ Matrix ResponseLikelihood::expectedInformation(std::span<const double> natural) 
     for (std::size_t r = 0; r < size; ++r)
         for (std::size_t c = r + 1; c < size; ++c)
             information(r, c) = information(c, r);
+    return information;
+}
+
+Matrix ResponseLikelihood::observedInformation(std::span<const double> natural) const {
+    const auto d = static_cast<std::size_t>(model_.dimension), k = static_cast<std::size_t>(model_.levels);
+    const std::size_t size = parameters();
+    Matrix information(size, size);
+    // Each answer depends on a and b, linear in the parameters: the two rows of `moves`.
+    std::vector<double> moves[2] = {std::vector<double>(size), std::vector<double>(size)};
+    for (const Group& group : groups_) {
+        const Step step = stepOf(group.level, natural.subspan(d + 1, k));
+        const bool last = isLast(group.level);
+        const double bend = step.slope * (1 + step.slope); // minus d^2 ln(1 - e^-g) / d g^2
+        for (std::size_t i = group.begin; i < group.end; ++i) {
+            double x = 0;
+            for (auto& move : moves)
+                std::fill(move.begin(), move.end(), 0.0);
+            for (std::size_t j = 0; j <= d; ++j) {
+                moves[0][j] = signed_[j * stride_ + i];
+                moves[1][j] = last ? 0.0 : moves[0][j];
+                x += natural[j] * moves[0][j];
+            }
+            moves[0][group.level > 0 ? d + group.level : d + 1] = group.level > 0 ? -1 : 1;
+            if (!last)
+                moves[1][d + 1 + group.level] = -1;
+
+            const double sa = logistic(x - step.lower), notA = logistic(step.lower - x);
+            const double sb = last ? 0.0 : logistic(x - step.upper);
+            const double notB = last ? 1.0 : logistic(step.upper - x);
+            double share = 1;
+            if (mixture_) {
+                const double ordinal = kept_ * step.between * sa * notB;
+                share = ordinal / (floorPart_ + ordinal);
+            }
+            const double first[2] = {notA + step.slope, last ? 0.0 : -(sb + step.slope)};
+            const double second[2][2] = {{-sa * notA - bend, bend}, {bend, -sb * notB - bend}};
+            for (std::size_t p = 0; p < (last ? 1u : 2u); ++p)
+                for (std::size_t q = 0; q < (last ? 1u : 2u); ++q) {
+                    const double curvature = -share * (second[p][q] + (1 - share) * first[p] * first[q]);
+                    for (std::size_t r = 0; r < size; ++r)
+                        for (std::size_t c = 0; c < size; ++c)
+                            information(r, c) += curvature * moves[p][r] * moves[q][c];
+                }
+        }
+    }
     return information;
 }
 

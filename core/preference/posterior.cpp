@@ -186,7 +186,7 @@ std::vector<ScalarSummary> summariesOf(const ResponseModel& model, const Draws& 
     if (model.sideBiasDeviation > 0)
         summaries.push_back(
             summarise("side bias", chainsOf(n, chains, [&](std::size_t i) { return draws.sideBias[i]; })));
-    for (std::size_t k = model.cannotTell ? 0 : 1; k < draws.cuts.columns; ++k)
+    for (std::size_t k = model.cannotTell ? 0 : 1; k < draws.cuts.columns && model.gapDeviation > 0; ++k)
         summaries.push_back(summarise("cut " + std::to_string(k),
                                       chainsOf(n, chains, [&](std::size_t i) { return draws.cuts(i, k); })));
     return summaries;
@@ -258,6 +258,20 @@ Draws drawPrior(const ResponseModel& model, int count, std::uint64_t seed) {
         std::copy_n(natural.begin() + static_cast<std::ptrdiff_t>(d) + 1, k, draws.cuts.row(i).begin());
     }
     return draws;
+}
+
+std::vector<double> meanDirection(const Draws& draws) {
+    std::vector<double> mean(draws.weights.columns, 0.0);
+    for (std::size_t i = 0; i < draws.count(); ++i) {
+        const auto row = draws.weights.row(i);
+        const double length = std::sqrt(dot(row, row));
+        for (std::size_t j = 0; j < mean.size() && length > 0; ++j)
+            mean[j] += row[j] / length;
+    }
+    const double length = std::sqrt(dot(mean, mean));
+    for (double& value : mean)
+        value = length > 0 ? value / length : 0.0;
+    return mean;
 }
 
 } // namespace whichway
