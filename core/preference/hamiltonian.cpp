@@ -23,7 +23,8 @@ HamiltonianChain::HamiltonianChain(const LogDensity& density, std::span<const do
         list->resize(p);
     value_ = evaluate(whitened_, gradient_);
     position_ = trialPosition_;
-    step_ = 1.2 / std::sqrt(std::sqrt(static_cast<double>(p)));
+    step_ =
+        settings_.firstStep > 0 ? settings_.firstStep : 1.2 / std::sqrt(std::sqrt(static_cast<double>(p)));
     shrinkPoint_ = exactLog(step_);
     logStepMean_ = shrinkPoint_;
 }

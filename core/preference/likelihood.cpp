@@ -20,55 +20,75 @@ double oneMinusExp(double g) {
     return g * (1 - g / 2 * (1 - g / 3 * (1 - g / 4 * (1 - g / 5 * (1 - g / 6)))));
 }
 
-/// What the answers of one level share, and the rows that they read and write.
+/// Rows that a loop over the answers of one level reads and writes.
 struct Rows {
-    const double* eta;
-    double *up, *down, *share, *factor;
-    double lower, upper, between, floorPart, kept;
+    const double* __restrict eta;
+    double* __restrict up;     ///< share * S(-a)
+    double* __restrict down;   ///< share * S(b)
+    double* __restrict share;  ///< of the ordinal part in P
+    double* __restrict factor; ///< what is left to take the logarithm of
 };
 
 // With a = x - lower, b = x - upper: P_ord = S(a) - S(b) = S(a) S(-b) (1 - e^-g), which does not cancel, and
 //     d ln P_ord / da = S(-a) + s,  d ln P_ord / db = -(S(b) + s),  s = d ln(1 - e^-g) / d g.
-// A lapse multiplies both by the share of P_ord in P. `factor` is P, or without a lapse 1 / ((1 + e^-|a|)(1 +
-// e^-|b|)), which lacks an exponential that is added as a logarithm.
-template <bool kMixture, bool kLast>
-void evaluateLevel(const Rows& rows, std::size_t begin, std::size_t end) {
-    const double* const __restrict eta = rows.eta;
-    double* const __restrict up = rows.up;
-    double* const __restrict down = rows.down;
-    double* const __restrict share = rows.share;
-    double* const __restrict factor = rows.factor;
-    const double lower = rows.lower, upper = rows.upper, floorPart = rows.floorPart;
-    const double scale = rows.kept * rows.between;
+// A lapse multiplies both by the share of P_ord in P.
+
+/// Beyond it S(x) is 0 or 1 to 65 digits, which under a lapse is all the same; e^4x does not overflow.
+constexpr double kFar = 150;
+/// Of the lapse's share of a category: less is no lapse.
+constexpr double kLeastFloor = 1e-40;
+
+double expWithin(double x) {
+    x = x < -kFar ? -kFar : x;
+    x = x > kFar ? kFar : x;
+    return exactExp(x);
+}
+
+/// With a lapse: one exponential and two divisions an answer; `factor` is P.
+template <bool kLast>
+void evaluateLevel(const Rows& rows, std::size_t begin, std::size_t end, double lower, double upper,
+                   double between, double floorPart, double kept) {
+    const double timesLow = expWithin(lower), timesHigh = expWithin(upper), scale = kept * between;
     for (std::size_t i = begin; i < end; ++i) {
-        const double a = eta[i] - lower;
-        const double ta = exactExp(-std::abs(a));
-        const double ia = 1.0 / (1.0 + ta);
-        const double sa = (a < 0 ? ta : 1.0) * ia;
-        const double notA = (a < 0 ? 1.0 : ta) * ia;
-        double sb = 0, notB = 1, ib = 1;
-        if constexpr (!kLast) {
-            const double b = eta[i] - upper;
-            const double tb = exactExp(-std::abs(b));
-            ib = 1.0 / (1.0 + tb);
-            sb = (b < 0 ? tb : 1.0) * ib;
-            notB = (b < 0 ? 1.0 : tb) * ib;
-        }
-        if constexpr (kMixture) {
-            const double ordinal = scale * sa * notB;
-            const double p = floorPart + ordinal;
-            const double r = ordinal / p;
-            factor[i] = p;
-            share[i] = r;
-            up[i] = r * notA;
-            down[i] = r * sb;
-        } else {
-            factor[i] = ia * ib;
-            share[i] = 1.0;
-            up[i] = notA;
-            down[i] = sb;
-        }
+        const double t = expWithin(-rows.eta[i]);
+        const double low = t * timesLow; // e^-a
+        const double high = kLast ? 0.0 : t * timesHigh;
+        const double numerator = kLast ? kept : scale * high;
+        const double denominator = (1.0 + low) * (1.0 + high);
+        const double total = floorPart * denominator + numerator;
+        const double inverse = 1.0 / denominator;
+        const double share = numerator / total;
+        rows.factor[i] = total * inverse;
+        rows.share[i] = share;
+        rows.up[i] = share * (low * (1.0 + high) * inverse);
+        rows.down[i] = kLast ? 0.0 : share * ((1.0 + low) * inverse);
     }
+}
+
+/// Without a lapse ln P = min(a, 0) - max(b, 0) + ln(1 - e^-g) + ln factor. @return the sum of all but the
+/// last.
+template <bool kLast>
+double evaluateLevelWithoutLapse(const Rows& rows, std::size_t begin, std::size_t end, double lower,
+                                 double upper, double between) {
+    for (std::size_t i = begin; i < end; ++i) {
+        const double a = rows.eta[i] - lower;
+        const double b = rows.eta[i] - upper;
+        const double ta = exactExp(-std::abs(a));
+        const double tb = kLast ? 0.0 : exactExp(-std::abs(b));
+        const double ia = 1.0 / (1.0 + ta);
+        const double ib = 1.0 / (1.0 + tb);
+        rows.factor[i] = ia * ib;
+        rows.share[i] = 1.0;
+        rows.up[i] = (a < 0 ? 1.0 : ta) * ia;
+        rows.down[i] = kLast ? 0.0 : (b < 0 ? tb : 1.0) * ib;
+    }
+    double sum = 0;
+    for (std::size_t i = begin; i < end; ++i) {
+        sum += std::min(rows.eta[i] - lower, 0.0);
+        if (!kLast)
+            sum -= std::max(rows.eta[i] - upper, 0.0);
+    }
+    return kLast ? sum : sum + static_cast<double>(end - begin) * exactLog(between);
 }
 
 struct LevelSums {
@@ -126,9 +146,13 @@ ResponseLikelihood::ResponseLikelihood(const ResponseModel& model, std::span<con
     }
     floorPart_ = model.lapse / model.categories();
     kept_ = 1.0 - model.lapse;
-    mixture_ = floorPart_ > 1e-250; // less is not to be told from none
-    if (mixture_ && floorPart_ < 1e-9)
+    mixture_ = floorPart_ > kLeastFloor;
+    if (!mixture_) {
+        floorPart_ = 0;
+        kept_ = 1;
+    } else if (floorPart_ < 1e-9) {
         perLog_ = 1;
+    }
 }
 
 ResponseLikelihood::Step ResponseLikelihood::stepOf(std::size_t level, std::span<const double> cuts) const {
@@ -166,35 +190,21 @@ double ResponseLikelihood::evaluate(std::span<const double> natural, std::span<d
     double logLikelihood = 0;
     std::fill(gradient.begin(), gradient.end(), 0.0);
     const std::span<const double> cuts = natural.subspan(d + 1, k);
+    const Rows rows{.eta = eta,
+                    .up = scratch.up.data(),
+                    .down = scratch.down.data(),
+                    .share = scratch.share.data(),
+                    .factor = scratch.factor.data()};
     for (const Group& group : groups_) {
         const Step step = stepOf(group.level, cuts);
         const bool last = isLast(group.level);
-        const Rows rows{.eta = eta,
-                        .up = scratch.up.data(),
-                        .down = scratch.down.data(),
-                        .share = scratch.share.data(),
-                        .factor = scratch.factor.data(),
-                        .lower = step.lower,
-                        .upper = step.upper,
-                        .between = step.between,
-                        .floorPart = floorPart_,
-                        .kept = kept_};
-        if (mixture_)
-            last ? evaluateLevel<true, true>(rows, group.begin, group.end)
-                 : evaluateLevel<true, false>(rows, group.begin, group.end);
-        else
-            last ? evaluateLevel<false, true>(rows, group.begin, group.end)
-                 : evaluateLevel<false, false>(rows, group.begin, group.end);
-        if (!mixture_) {
-            for (std::size_t i = group.begin; i < group.end; ++i) {
-                logLikelihood += std::min(eta[i] - step.lower, 0.0);
-                if (!last)
-                    logLikelihood -= std::max(eta[i] - step.upper, 0.0);
-            }
-            if (!last)
-                logLikelihood += static_cast<double>(group.end - group.begin) * exactLog(step.between);
+        if (mixture_) {
+            const auto kernel = last ? evaluateLevel<true> : evaluateLevel<false>;
+            kernel(rows, group.begin, group.end, step.lower, step.upper, step.between, floorPart_, kept_);
+        } else {
+            const auto kernel = last ? evaluateLevelWithoutLapse<true> : evaluateLevelWithoutLapse<false>;
+            logLikelihood += kernel(rows, group.begin, group.end, step.lower, step.upper, step.between);
         }
-
         const LevelSums sums = sumLevel(rows, group.begin, group.end);
         const double shared = step.slope * sums.share;
         if (group.level > 0)

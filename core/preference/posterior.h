@@ -46,7 +46,7 @@ struct Posterior {
 
 struct SamplerSettings {
     int chains = 4;
-    int warmUp = 150; ///< iterations per chain, discarded
+    int warmUp = 80; ///< iterations per chain, discarded
     int drawsPerChain = 1000;
     std::uint64_t seed = 1;
     /// Summarise, and where the summaries show no convergence go on, up to eight times the draws, which are
@@ -54,9 +54,9 @@ struct SamplerSettings {
     bool diagnose = true;
 };
 
-/// Hamiltonian Monte Carlo in coordinates whose prior is standard normal, whitened first by an empirical-Bayes
-/// Laplace fit, then by the covariance of a short pilot run, which is discarded. Same input, same bits, on any
-/// machine. With no responses the draws are of the prior.
+/// Hamiltonian Monte Carlo in coordinates whose prior is standard normal, whitened first by an
+/// empirical-Bayes Laplace fit, then by the covariance of a short pilot run, which is discarded. Same input,
+/// same bits, on any machine. With no responses the draws are of the prior.
 /// @return kCancelled if stop was requested (polled at each move of a chain).
 /// @throws std::invalid_argument for a model or settings out of range, or a response that does not fit.
 Result<Posterior> samplePosterior(const ResponseModel& model, std::span<const Response> responses,
