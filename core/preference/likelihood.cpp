@@ -44,13 +44,19 @@ double expWithin(double x) {
     return exactExp(x);
 }
 
-/// With a lapse: one exponential and two divisions an answer; `factor` is P.
+/// e^-eta of all answers: a loop of its own, because a short one keeps more exponentials in flight.
+void exponentials(const double* __restrict eta, double* __restrict result, std::size_t size) {
+    for (std::size_t i = 0; i < size; ++i)
+        result[i] = expWithin(-eta[i]);
+}
+
+/// With a lapse: two divisions an answer; `share` comes in as e^-eta; `factor` is P.
 template <bool kLast>
 void evaluateLevel(const Rows& rows, std::size_t begin, std::size_t end, double lower, double upper,
                    double between, double floorPart, double kept) {
     const double timesLow = expWithin(lower), timesHigh = expWithin(upper), scale = kept * between;
     for (std::size_t i = begin; i < end; ++i) {
-        const double t = expWithin(-rows.eta[i]);
+        const double t = rows.share[i];  // e^-eta
         const double low = t * timesLow; // e^-a
         const double high = kLast ? 0.0 : t * timesHigh;
         const double numerator = kLast ? kept : scale * high;
@@ -105,6 +111,17 @@ LevelSums sumLevel(const Rows& rows, std::size_t begin, std::size_t end) {
     return sums;
 }
 
+void multiply(const double* __restrict column, double factor, double* __restrict result, std::size_t size) {
+    for (std::size_t i = 0; i < size; ++i)
+        result[i] = factor * column[i];
+}
+
+void addTwo(const double* __restrict a, double factorA, const double* __restrict b, double factorB,
+            double* __restrict result, std::size_t size) {
+    for (std::size_t i = 0; i < size; ++i)
+        result[i] = (result[i] + factorA * a[i]) + factorB * b[i];
+}
+
 /// Four sums side by side, so that the order is the same with and without vector instructions.
 double dotByFours(const double* __restrict a, const double* __restrict b, std::size_t size) {
     double sums[4] = {0, 0, 0, 0};
@@ -112,6 +129,14 @@ double dotByFours(const double* __restrict a, const double* __restrict b, std::s
         for (std::size_t k = 0; k < 4; ++k)
             sums[k] += a[i + k] * b[i + k];
     return (sums[0] + sums[1]) + (sums[2] + sums[3]);
+}
+
+double productByFours(const double* __restrict a, std::size_t size) {
+    double products[4] = {1, 1, 1, 1};
+    for (std::size_t i = 0; i < size; i += 4)
+        for (std::size_t k = 0; k < 4; ++k)
+            products[k] *= a[i + k];
+    return (products[0] * products[1]) * (products[2] * products[3]);
 }
 
 } // namespace
@@ -151,7 +176,7 @@ ResponseLikelihood::ResponseLikelihood(const ResponseModel& model, std::span<con
         floorPart_ = 0;
         kept_ = 1;
     } else if (floorPart_ < 1e-9) {
-        perLog_ = 1;
+        perLog_ = 4;
     }
 }
 
@@ -179,13 +204,13 @@ double ResponseLikelihood::evaluate(std::span<const double> natural, std::span<d
          {&scratch.eta, &scratch.up, &scratch.down, &scratch.share, &scratch.factor, &scratch.slope})
         list->resize(stride_);
     double* const __restrict eta = scratch.eta.data();
-    std::fill(eta, eta + stride_, 0.0);
-    for (std::size_t j = 0; j <= d; ++j) {
-        const double* const __restrict column = signed_.data() + j * stride_;
-        const double weight = natural[j];
-        for (std::size_t i = 0; i < stride_; ++i)
-            eta[i] += weight * column[i];
-    }
+    const auto columnOf = [&](std::size_t j) { return signed_.data() + j * stride_; };
+    multiply(columnOf(d), natural[d], eta, stride_);
+    std::size_t done = 0;
+    for (; done + 1 < d; done += 2)
+        addTwo(columnOf(done), natural[done], columnOf(done + 1), natural[done + 1], eta, stride_);
+    if (done < d)
+        addTwo(columnOf(done), natural[done], columnOf(done), 0.0, eta, stride_);
 
     double logLikelihood = 0;
     std::fill(gradient.begin(), gradient.end(), 0.0);
@@ -195,6 +220,8 @@ double ResponseLikelihood::evaluate(std::span<const double> natural, std::span<d
                     .down = scratch.down.data(),
                     .share = scratch.share.data(),
                     .factor = scratch.factor.data()};
+    if (mixture_)
+        exponentials(eta, scratch.share.data(), stride_);
     for (const Group& group : groups_) {
         const Step step = stepOf(group.level, cuts);
         const bool last = isLast(group.level);
@@ -215,13 +242,9 @@ double ResponseLikelihood::evaluate(std::span<const double> natural, std::span<d
             gradient[d + 1 + group.level] += sums.down + shared;
     }
 
-    const double* const factor = scratch.factor.data();
-    for (std::size_t i = 0; i < count_;) {
-        double product = 1;
-        for (const std::size_t end = std::min(count_, i + perLog_); i < end; ++i)
-            product *= factor[i];
-        logLikelihood += exactLog(product);
-    }
+    std::fill(scratch.factor.begin() + static_cast<std::ptrdiff_t>(count_), scratch.factor.end(), 1.0);
+    for (std::size_t i = 0; i < stride_; i += perLog_)
+        logLikelihood += exactLog(productByFours(scratch.factor.data() + i, std::min(perLog_, stride_ - i)));
 
     double* const slope = scratch.slope.data();
     for (std::size_t i = 0; i < count_; ++i)

@@ -60,7 +60,7 @@ private:
         signed_; ///< (d + 1) x stride: the differences, and 1 for delta, times the answered side
     double floorPart_ = 0, kept_ = 1;
     bool mixture_ = false;    ///< has a lapse
-    std::size_t perLog_ = 32; ///< factors whose product cannot underflow
+    std::size_t perLog_ = 32; ///< factors whose product cannot underflow, a multiple of 4
 };
 
 } // namespace whichway
