@@ -4,6 +4,7 @@
 #include "ui/look/tokens.h"
 
 #include <QPainter>
+#include <QPainterPath>
 #include <algorithm>
 #include <cmath>
 #include <numbers>
