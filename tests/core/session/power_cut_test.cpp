@@ -45,8 +45,11 @@ Life live(Conductor& conductor, int answers, int undoAt) {
             const bool first = prompt.trial == undoAt && !undone;
             done = conductor.answer({.answer = first ? 3 : answerFor(prompt.trial)});
             if (done && first) {
+                life.confirmed[prompt.trial] = 3;
                 undone = true;
                 done = conductor.undo();
+                if (done || conductor.state().undone > 0)
+                    life.confirmed.erase(prompt.trial); // taken back, whether it was shown again or not
             } else if (done) {
                 life.confirmed[prompt.trial] = answerFor(prompt.trial);
                 --answers;
