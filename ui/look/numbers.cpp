@@ -35,6 +35,15 @@ QString withUnit(double value, int decimals, const QString& unit) {
     return unit.isEmpty() || unit == QLatin1String("1") ? number : number + kUnitSpace + unit;
 }
 
+QString unitText(const std::string& unit) {
+    if (unit == "1")
+        return {};
+    QString text = QString::fromStdString(unit);
+    text.replace(QLatin1String("^2"), QString(QChar(0x00b2)));
+    text.replace(QLatin1String("^3"), QString(QChar(0x00b3)));
+    return text;
+}
+
 QString intervalText(double low, double high, int decimals, const QString& unit, int percent) {
     return QCoreApplication::translate("numbers", "%1 % interval %2 to %3")
         .arg(QString::number(percent), numberText(low, decimals), withUnit(high, decimals, unit));

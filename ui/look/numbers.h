@@ -2,6 +2,7 @@
 #pragma once
 
 #include <QString>
+#include <string>
 
 namespace whichway {
 
@@ -14,6 +15,8 @@ QString numberText(double value, int decimals);
 QString shortNumber(double value);
 /// "3.0 s"; the unit "1" and the empty unit are not written.
 QString withUnit(double value, int decimals, const QString& unit);
+/// A unit as it is read: "m/s³" of "m/s^3"; empty for "1".
+QString unitText(const std::string& unit);
 /// "90 % interval 1.9 to 5.0 s".
 QString intervalText(double low, double high, int decimals, const QString& unit, int percent = 90);
 /// "18 min 42 s", "1 h 05 min", "42 s": whole seconds, for clocks.
