@@ -154,6 +154,19 @@ Event eventOf(std::size_t type, const Json& payload) {
 constexpr std::string_view kHashField = ",\"hash\":\"";
 constexpr std::size_t kTailLength = kHashField.size() + 64 + 2;
 
+bool endsWithHash(std::string_view line) {
+    return line.size() >= kTailLength &&
+           line.substr(line.size() - kTailLength, kHashField.size()) == kHashField && line.ends_with("\"}");
+}
+
+// Both only of a line that ends with its hash.
+std::string hashField(std::string_view line) {
+    return std::string(line.substr(line.size() - 66, 64));
+}
+std::string coveredBy(std::string_view line) {
+    return std::string(line.substr(0, line.size() - kTailLength)) + "}";
+}
+
 Error corrupt(std::uint64_t number, const std::string& why) {
     return {.code = "journal.corrupt",
             .place = {.file = {}, .line = static_cast<int>(number)},
@@ -186,16 +199,18 @@ EncodedRecord encodeRecord(const Record& record, std::string_view previousHash) 
     return encoded;
 }
 
+bool isWholeLine(std::string_view line) {
+    return endsWithHash(line) && sha256(coveredBy(line)) == hashField(line);
+}
+
 Result<DecodedRecord> decodeRecord(std::string_view line, std::uint64_t expectedNumber,
                                    std::string_view previousHash) {
     if (!line.empty() && line.back() == '\n')
         line.remove_suffix(1);
-    if (line.size() < kTailLength ||
-        line.substr(line.size() - kTailLength, kHashField.size()) != kHashField ||
-        line.substr(line.size() - 2) != "\"}")
+    if (!endsWithHash(line))
         return corrupt(expectedNumber, "the line does not end with its hash");
-    const std::string hash(line.substr(line.size() - 66, 64));
-    const std::string covered = std::string(line.substr(0, line.size() - kTailLength)) + "}";
+    const std::string hash = hashField(line);
+    const std::string covered = coveredBy(line);
     if (sha256(covered) != hash)
         return corrupt(expectedNumber, "its text does not fit its hash");
     const Json json = Json::parse(covered, nullptr, false);

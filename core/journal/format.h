@@ -23,6 +23,9 @@ struct EncodedRecord {
 /// own hash (see DEVELOPERS.md).
 EncodedRecord encodeRecord(const Record& record, std::string_view previousHash);
 
+/// Whether the line (without its newline) is one that was written whole: its text fits its own hash.
+bool isWholeLine(std::string_view line);
+
 struct DecodedRecord {
     Record record = {};
     std::string hash = {};

@@ -11,6 +11,16 @@ namespace {
 /// A session of some hundred trials with a library of some thousand motions stays far below this.
 constexpr std::uint64_t kLongestJournal = 512ull << 20;
 
+bool holdsWholeRecord(std::string_view text) {
+    for (std::size_t newline = text.find('\n'); newline != std::string_view::npos;
+         newline = text.find('\n')) {
+        if (isWholeLine(text.substr(0, newline)))
+            return true;
+        text.remove_prefix(newline + 1);
+    }
+    return false;
+}
+
 } // namespace
 
 Result<JournalReading> readJournal(const FileSystem& files, const std::string& path) {
@@ -25,10 +35,10 @@ Result<JournalReading> readJournal(const FileSystem& files, const std::string& p
             break;
         auto decoded = decodeRecord(rest.substr(0, newline), reading.records.size() + 1, reading.lastHash);
         if (!decoded) {
-            // Only what was being written can be torn, and that is the last line; the newline itself may have
-            // been among the bytes that reached the disk.
-            const bool last = newline + 1 == rest.size();
-            if (last && decoded.error().code == "journal.corrupt")
+            // A power cut garbles what was being written, and nothing whole stands behind that. A whole
+            // record behind a bad line shows that the line was once written and synced, and has been damaged
+            // since.
+            if (decoded.error().code == "journal.corrupt" && !holdsWholeRecord(rest.substr(newline + 1)))
                 break;
             Error error = decoded.error();
             error.place.file = path;
@@ -40,6 +50,7 @@ Result<JournalReading> readJournal(const FileSystem& files, const std::string& p
         rest.remove_prefix(newline + 1);
     }
     reading.tornBytes = content->size() - reading.goodBytes;
+    reading.torn = content->substr(reading.goodBytes);
     return reading;
 }
 
@@ -64,9 +75,14 @@ Result<JournalWriter> JournalWriter::create(FileSystem& files, const Clock& cloc
 Result<JournalWriter> JournalWriter::resume(FileSystem& files, const Clock& clock, const std::string& path,
                                             const JournalReading& reading) {
     JournalWriter writer(files, clock, path);
-    if (reading.tornBytes > 0)
+    if (reading.tornBytes > 0) {
+        // Whatever it was, it is kept beside the journal: cutting must not be what loses an answer.
+        const std::string aside = path + ".torn-" + std::to_string(reading.records.size() + 1);
+        if (auto kept = files.replace(aside, reading.torn); !kept)
+            return kept.error();
         if (auto cut = files.truncate(path, reading.goodBytes); !cut)
             return cut.error();
+    }
     auto file = files.openAppend(path);
     if (!file)
         return file.error();

@@ -18,6 +18,7 @@ struct JournalReading {
     std::vector<Record> records = {};
     std::uint64_t goodBytes = 0; ///< where the last whole record ends
     std::uint64_t tornBytes = 0; ///< what follows: a record that was being written
+    std::string torn = {};       ///< those bytes
     std::string lastHash = {};
 };
 
@@ -30,7 +31,8 @@ class JournalWriter {
 public:
     /// Starts a journal that must not exist yet.
     static Result<JournalWriter> create(FileSystem& files, const Clock& clock, const std::string& path);
-    /// Goes on behind `reading`, after cutting a torn tail off.
+    /// Goes on behind `reading`. A torn tail is cut off, after it was saved beside the journal as
+    /// PATH.torn-NUMBER.
     static Result<JournalWriter> resume(FileSystem& files, const Clock& clock, const std::string& path,
                                         const JournalReading& reading);
 

@@ -50,6 +50,7 @@ struct PlannedPair {
     Pair pair = {}; ///< canonical order; the session decides the sides
     double information =
         0; ///< bits about all parameters, given the answers and the pairs before it, on fresh draws
+    bool operator==(const PlannedPair&) const = default;
 };
 
 struct Plan {

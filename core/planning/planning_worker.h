@@ -23,7 +23,8 @@ public:
     virtual std::optional<Result<Plan>> take(std::chrono::milliseconds patience) = 0;
 };
 
-/// Plans at once, in the caller's thread: for simulated participants, replay and tests.
+/// Plans in the caller's thread, when the plan is taken (a request that is replaced before costs nothing):
+/// for simulated participants and tests.
 class ImmediatePlanner final : public Planner {
 public:
     explicit ImmediatePlanner(std::shared_ptr<const PlanningProblem> problem);
@@ -32,7 +33,7 @@ public:
 
 private:
     std::shared_ptr<const PlanningProblem> problem_;
-    std::optional<Result<Plan>> ready_;
+    std::optional<PlanRequest> waiting_;
 };
 
 /// Plans in one background thread at the lowest priority. The newest request wins: a running one is stopped.
@@ -58,6 +59,7 @@ private:
     std::mutex mutex_;
     std::condition_variable_any changed_;
     std::optional<PlanRequest> waiting_;
+    bool busy_ = false;
     std::stop_source running_;
     std::optional<Result<Plan>> ready_;
     // last: it uses all of the above

@@ -265,11 +265,10 @@ Result<void> Conductor::showTrial() {
     }
     const int trial = nextTrial(!state_.queue.empty());
     if (trial == 0) {
-        if (!waitingSince_) {
+        if (!waitingSince_)
             waitingSince_ = surroundings_.clock.sinceBoot();
-            if (asked_.empty())
-                askForPlan();
-        }
+        if (asked_.empty())
+            askForPlan();
         return {};
     }
     const ScheduledTrial& plan = scheduled(trial);
@@ -431,18 +430,23 @@ Result<void> Conductor::adoptPlan() {
     // A plan made before a pair was shown might propose that very pair: such requests are void.
     std::erase_if(asked_, [&](const Asked& asked) { return !knowsAllShown(asked); });
     const auto patience = std::chrono::milliseconds(static_cast<long long>(patience_ * 1000));
-    auto taken = surroundings_.planner.take(patience);
-    if (!taken)
-        return {};
-    if (!taken->ok()) {
-        planProblem_ = describe(taken->error());
-        return {};
+    if (auto taken = surroundings_.planner.take(patience)) {
+        if (taken->ok()) {
+            plan_ = std::move(taken->value());
+        } else {
+            planProblem_ = describe(taken->error());
+            asked_.clear(); // asked again when a pair is wanted
+        }
     }
-    const Plan& plan = taken->value();
+    if (!plan_)
+        return {};
+    const Plan& plan = *plan_;
     const auto asked = std::find_if(asked_.begin(), asked_.end(),
                                     [&](const Asked& one) { return one.request.id == plan.request; });
-    if (asked == asked_.end())
+    if (asked == asked_.end()) {
+        plan_.reset();
         return {};
+    }
     PlanAdopted event{.request = plan.request,
                       .known = asked->known,
                       .pending = asked->pending,
@@ -462,6 +466,7 @@ Result<void> Conductor::adoptPlan() {
         return written;
     planProblem_.clear();
     asked_.erase(asked_.begin(), asked + 1);
+    plan_.reset();
     return {};
 }
 

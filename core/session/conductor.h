@@ -141,6 +141,7 @@ private:
     const Texts* texts_ = nullptr;
     double patience_ = 0;
     std::vector<Asked> asked_; ///< requests whose plans may still be adopted
+    std::optional<Plan> plan_; ///< taken from the planner and not yet adopted
     std::uint64_t lastRequest_ = 0;
     std::string planProblem_;
     std::optional<std::chrono::nanoseconds> waitingSince_; ///< since when no pair is ready

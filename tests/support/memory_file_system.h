@@ -13,9 +13,9 @@ namespace whichway {
 
 /// A file system in memory that loses, as real ones may, whatever was not synced when the power goes.
 ///
-/// Every primitive step (create, write, sync, rename, sync of a folder, …) is counted. `cutPowerAfter(n)` lets n
-/// steps pass and fails everything after them; `afterReboot` gives what the disk holds then. `failStep(n)` lets step n
-/// alone fail with a full disk, a write leaving half of its bytes behind.
+/// Every primitive step (create, write, sync, rename, sync of a folder, …) is counted. `cutPowerAfter(n)`
+/// lets n steps pass and fails everything after them; `afterReboot` gives what the disk holds then.
+/// `failStep(n)` lets step n alone fail with a full disk, a write leaving half of its bytes behind.
 class MemoryFileSystem final : public FileSystem {
 public:
     /// What becomes of data and folder entries that were not synced.

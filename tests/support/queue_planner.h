@@ -8,8 +8,9 @@
 
 namespace whichway {
 
-/// A planner for tests of what happens around plans: proposes the first pairs of the library that were neither asked
-/// nor are pending or reserved. Costs nothing. `late` makes it answer one request behind, as a slow planner would.
+/// A planner for tests of what happens around plans: proposes the first pairs of the library that were
+/// neither asked nor are pending or reserved. Costs nothing. `late` makes it answer one request behind, as a
+/// slow planner would.
 class QueuePlanner final : public Planner {
 public:
     explicit QueuePlanner(int motions, bool late = false) : motions_(motions), late_(late) {}
@@ -18,16 +19,19 @@ public:
         if (late_ && waiting_)
             ready_ = planFor(*waiting_);
         waiting_ = std::move(request);
+        lateTakes_ = 0;
         ++requests;
     }
 
     std::optional<Result<Plan>> take(std::chrono::milliseconds) override {
         if (failing)
-            return Result<Plan>(Error{.code = "planning.no-pair", .place = {}, .message = "No pair.", .remedy = ""});
+            return Result<Plan>(
+                Error{.code = "planning.no-pair", .place = {}, .message = "No pair.", .remedy = ""});
         if (silent)
             return std::nullopt;
         std::optional<Result<Plan>> plan = ready_;
-        if (!late_ && waiting_) {
+        const bool askedAgain = !plan && ++lateTakes_ > 1; // whoever waits long enough gets it
+        if ((!late_ || askedAgain) && waiting_) {
             plan = planFor(*waiting_);
             waiting_.reset();
         }
@@ -56,6 +60,7 @@ private:
 
     int motions_;
     bool late_;
+    int lateTakes_ = 0;
     std::optional<PlanRequest> waiting_;
     std::optional<Result<Plan>> ready_;
 };

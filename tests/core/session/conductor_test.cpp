@@ -24,11 +24,14 @@ protected:
     QueuePlanner planner{30};
     std::unique_ptr<Conductor> conductor;
 
-    Surroundings surroundings() { return {.files = files, .clock = clock, .planner = planner, .program = "test"}; }
+    Surroundings surroundings() {
+        return {.files = files, .clock = clock, .planner = planner, .program = "test"};
+    }
 
     void begin() {
         auto begun = Conductor::begin(
-            study, {.kind = SessionKind::Pilot, .code = "K7", .language = "", .seed = 5, .id = kId}, surroundings());
+            study, {.kind = SessionKind::Pilot, .code = "K7", .language = "", .seed = 5, .id = kId},
+            surroundings());
         ASSERT_TRUE(begun.ok()) << describe(begun.error());
         conductor = std::move(*begun);
         conductor->setPatience(0);
@@ -279,7 +282,13 @@ TEST_F(Conducting, ResumesAtThePairThatHadNoAnswer) {
 }
 
 TEST_F(Conducting, ResumesAfterEveryStepOfAShortSession) {
-    study.protocol.trials = {.practice = 1, .main = 6, .heldOut = 2, .repeat = 1, .catchTrials = 1, .identical = 1, .breakAfter = 4};
+    study.protocol.trials = {.practice = 1,
+                             .main = 6,
+                             .heldOut = 2,
+                             .repeat = 1,
+                             .catchTrials = 1,
+                             .identical = 1,
+                             .breakAfter = 4};
     begin();
     for (int step = 0; step < 200 && kind() != PromptKind::Ended; ++step) {
         resume();

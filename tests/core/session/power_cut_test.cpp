@@ -28,7 +28,8 @@ int answerFor(int trial) {
     return (trial % 2 ? 1 : -1) * sizes[trial % 3];
 }
 
-/// Conducts until the end, `answers` answers, or the first error. `undoAt`: the trial whose first answer is undone.
+/// Conducts until the end, `answers` answers, or the first error. `undoAt`: the trial whose first answer is
+/// undone.
 Life live(Conductor& conductor, int answers, int undoAt) {
     Life life;
     bool undone = false;
@@ -44,8 +45,11 @@ Life live(Conductor& conductor, int answers, int undoAt) {
             const bool first = prompt.trial == undoAt && !undone;
             done = conductor.answer({.answer = first ? 3 : answerFor(prompt.trial)});
             if (done && first) {
+                life.confirmed[prompt.trial] = 3;
                 undone = true;
                 done = conductor.undo();
+                if (done || conductor.state().undone > 0)
+                    life.confirmed.erase(prompt.trial); // taken back, whether it was shown again or not
             } else if (done) {
                 life.confirmed[prompt.trial] = answerFor(prompt.trial);
                 --answers;
@@ -63,7 +67,13 @@ Life live(Conductor& conductor, int answers, int undoAt) {
 
 Study shortStudy() {
     Study study = smallStudy(24, 2);
-    study.protocol.trials = {.practice = 2, .main = 28, .heldOut = 5, .repeat = 2, .catchTrials = 2, .identical = 1, .breakAfter = 15};
+    study.protocol.trials = {.practice = 2,
+                             .main = 28,
+                             .heldOut = 5,
+                             .repeat = 2,
+                             .catchTrials = 2,
+                             .identical = 1,
+                             .breakAfter = 15};
     return study; // 40 answers in all
 }
 
@@ -108,7 +118,8 @@ TEST_P(PowerCut, KeepsEveryConfirmedAnswerExactlyOnceAndTheSessionCanGoOn) {
             ASSERT_TRUE(before.confirmed.empty());
             continue;
         }
-        // The answer being given when the power went may be there or not; every confirmed one is, once, unchanged.
+        // The answer being given when the power went may be there or not; every confirmed one is, once,
+        // unchanged.
         std::map<int, int> found;
         for (const AnsweredTrial& answer : state->answers)
             ASSERT_TRUE(found.emplace(answer.trial, answer.answer).second);
@@ -137,8 +148,8 @@ TEST_P(PowerCut, KeepsEveryConfirmedAnswerExactlyOnceAndTheSessionCanGoOn) {
 
 INSTANTIATE_TEST_SUITE_P(Losses, PowerCut,
                          ::testing::Values(MemoryFileSystem::Loss::Forget, MemoryFileSystem::Loss::Garble),
-                         [](const auto& info) {
-                             return info.param == MemoryFileSystem::Loss::Forget ? "Forget" : "Garble";
+                         [](const auto& tested) {
+                             return tested.param == MemoryFileSystem::Loss::Forget ? "Forget" : "Garble";
                          });
 
 // A full disk at any one step: the step reports it, changes nothing, and works when it is tried again.
