@@ -8,10 +8,16 @@
 namespace whichway {
 
 BaseCoordinates::BaseCoordinates(const ResponseModel& model)
-    : model_(model), hasScale_(model.scaleDeviation > 0), hasSideBias_(model.sideBiasDeviation > 0) {
-    const auto d = static_cast<std::size_t>(model.dimension);
-    firstCut_ = d + (hasScale_ ? 1 : 0) + (hasSideBias_ ? 1 : 0);
-    size_ = firstCut_ + static_cast<std::size_t>(model.levels) - (model.cannotTell ? 0 : 1);
+    : model_(model), hasScale_(model.scaleDeviation > 0), hasSideBias_(model.sideBiasDeviation > 0),
+      freeCuts_(model.gapDeviation > 0), firstLevel_(model.cannotTell ? 0 : 1) {
+    requireSound(model);
+    const auto levels = static_cast<std::size_t>(model.levels);
+    firstCut_ = static_cast<std::size_t>(model.dimension) + (hasScale_ ? 1 : 0) + (hasSideBias_ ? 1 : 0);
+    size_ = firstCut_ + (freeCuts_ ? levels - firstLevel_ : 0);
+    for (std::size_t k = 0; k < levels; ++k)
+        logGapMedian_.push_back(exactLog(k == 0   ? model.zeroCutMedian
+                                         : k == 1 ? model.firstGapMedian
+                                                  : model.laterGapMedian));
 }
 
 double BaseCoordinates::weightUnit(std::span<const double> u) const {
@@ -25,17 +31,12 @@ void BaseCoordinates::toNatural(std::span<const double> u, std::span<double> nat
     for (std::size_t j = 0; j < d; ++j)
         natural[j] = unit * u[j];
     natural[d] = hasSideBias_ ? model_.sideBiasDeviation * u[d + (hasScale_ ? 1 : 0)] : 0.0;
-    std::size_t next = firstCut_;
+    natural[d + 1] = 0;
     double cut = 0;
-    for (int k = 0; k < model_.levels; ++k) {
-        if (k == 0 && !model_.cannotTell) {
-            natural[d + 1] = 0;
-            continue;
-        }
-        const double median =
-            k == 0 ? model_.zeroCutMedian : (k == 1 ? model_.firstGapMedian : model_.laterGapMedian);
-        cut += exactExp(exactLog(median) + model_.gapDeviation * u[next++]);
-        natural[d + 1 + static_cast<std::size_t>(k)] = cut;
+    for (std::size_t k = firstLevel_; k < logGapMedian_.size(); ++k) {
+        const double spread = freeCuts_ ? model_.gapDeviation * u[firstCut_ + k - firstLevel_] : 0.0;
+        cut += exactExp(logGapMedian_[k] + spread);
+        natural[d + 1 + k] = cut;
     }
 }
 
@@ -54,7 +55,7 @@ Matrix BaseCoordinates::jacobian(std::span<const double> u) const {
     if (hasSideBias_)
         jacobian(d, d + (hasScale_ ? 1 : 0)) = model_.sideBiasDeviation;
     std::size_t coordinate = firstCut_;
-    for (std::size_t k = model_.cannotTell ? 0 : 1; k < levels; ++k, ++coordinate) {
+    for (std::size_t k = firstLevel_; k < levels && freeCuts_; ++k, ++coordinate) {
         const double gap = natural[d + 1 + k] - (k > 0 ? natural[d + k] : 0.0);
         for (std::size_t later = k; later < levels; ++later)
             jacobian(d + 1 + later, coordinate) = model_.gapDeviation * gap;
@@ -94,7 +95,7 @@ void BaseCoordinates::pullBack(std::span<const double> u, std::span<const double
     // A gap moves its own cut point and every later one.
     double later = 0;
     std::size_t coordinate = size_;
-    for (std::size_t k = levels; k-- > (model_.cannotTell ? 0u : 1u);) {
+    for (std::size_t k = levels; freeCuts_ && k-- > firstLevel_;) {
         later += slope[d + 1 + k];
         const double gap = natural[d + 1 + k] - (k > 0 ? natural[d + k] : 0.0);
         gradient[--coordinate] = model_.gapDeviation * gap * later;

@@ -18,6 +18,7 @@ namespace whichway {
 /// Order of u: v_1 … v_d, then u_h, u_delta, u_0, the gaps; those that the model fixes are left out.
 class BaseCoordinates {
 public:
+    /// @throws std::invalid_argument if the model is not sound.
     explicit BaseCoordinates(const ResponseModel& model);
 
     std::size_t size() const { return size_; }
@@ -38,7 +39,10 @@ private:
     ResponseModel model_;
     std::size_t size_ = 0;
     bool hasScale_ = false, hasSideBias_ = false;
-    std::size_t firstCut_ = 0; ///< index of the first cut coordinate in u
+    bool freeCuts_ = false;
+    std::size_t firstCut_ = 0;              ///< index of the first cut coordinate in u
+    std::size_t firstLevel_ = 0;            ///< 1 where c_0 is fixed at 0
+    std::vector<double> logGapMedian_ = {}; ///< of c_0 and the later gaps
 };
 
 /// The log posterior density of u up to a constant, with its gradient.

@@ -23,7 +23,8 @@ HamiltonianChain::HamiltonianChain(const LogDensity& density, std::span<const do
         list->resize(p);
     value_ = evaluate(whitened_, gradient_);
     position_ = trialPosition_;
-    step_ = 1.2 / std::sqrt(std::sqrt(static_cast<double>(p)));
+    step_ =
+        settings_.firstStep > 0 ? settings_.firstStep : 1.2 / std::sqrt(std::sqrt(static_cast<double>(p)));
     shrinkPoint_ = exactLog(step_);
     logStepMean_ = shrinkPoint_;
 }
@@ -37,11 +38,11 @@ double HamiltonianChain::evaluate(std::span<const double> whitened, std::span<do
         trialPosition_[i] = sum;
     }
     const double value = density_(trialPosition_, slope_);
-    for (std::size_t j = 0; j < p; ++j) {
-        double sum = 0;
-        for (std::size_t i = j; i < p; ++i)
-            sum += factor_(i, j) * slope_[i];
-        gradient[j] = sum;
+    std::fill(gradient.begin(), gradient.end(), 0.0);
+    for (std::size_t i = 0; i < p; ++i) {
+        const double slope = slope_[i];
+        for (std::size_t j = 0; j <= i; ++j)
+            gradient[j] += factor_(i, j) * slope;
     }
     return value;
 }

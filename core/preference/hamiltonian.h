@@ -20,9 +20,10 @@ using LogDensity = std::function<double(std::span<const double>, std::span<doubl
 class HamiltonianChain {
 public:
     struct Settings {
-        double trajectory = 2.2;  ///< in whitened units, times U(0.7, 1.3)
+        double trajectory = 1.8;  ///< in whitened units, times U(0.7, 1.3)
         double acceptance = 0.85; ///< target of the step size
         int mostSteps = 32;       ///< of one trajectory
+        double firstStep = 0;     ///< of the adaptation; 0: 1.2 over the fourth root of the dimension
     };
 
     /// `density` must outlive it. `factor`: lower Cholesky factor of the covariance. Starts at `start`.
@@ -34,6 +35,7 @@ public:
     /// Fixes the step size to its average.
     void endWarmUp();
     std::span<const double> position() const { return position_; }
+    double stepSize() const { return step_; } ///< in whitened units
 
 private:
     double evaluate(std::span<const double> whitened, std::span<double> gradient);

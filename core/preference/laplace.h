@@ -4,7 +4,6 @@
 #include "core/numbers/linear_algebra.h"
 #include "core/preference/base_coordinates.h"
 #include "core/preference/likelihood.h"
-#include "core/result.h"
 
 #include <vector>
 
@@ -21,18 +20,5 @@ struct LaplaceFit {
 /// weights, the scale in turn from E|w|^2 (the joint mode of weights and scale is a place where the posterior
 /// is not).
 LaplaceFit fitLaplace(const ResponseLikelihood& likelihood, const BaseCoordinates& coordinates);
-
-/// The maximum of the likelihood alone, flat in every parameter that the model leaves free (the weights, the
-/// side bias unless its deviation is 0, the cut points).
-struct LikelihoodMaximum {
-    std::vector<double> natural = {}; ///< as in ResponseLikelihood
-    Matrix covariance = {};           ///< inverse expected information of the free parameters, others 0
-    double logLikelihood = 0;
-    int iterations = 0;
-};
-
-/// Fisher scoring with step halving. @return "preference.no-maximum" if the likelihood has none (the answers
-/// separate perfectly, or a feature never varied).
-Result<LikelihoodMaximum> maximiseLikelihood(const ResponseLikelihood& likelihood);
 
 } // namespace whichway

@@ -43,7 +43,7 @@ public:
             throw std::logic_error("samplePosterior: the Laplace covariance is not positive definite");
         std::vector<HamiltonianChain> pilots;
         for (int chain = 0; chain < settings_.chains; ++chain)
-            pilots.push_back(startChain(fit.centre, factor, factor, fit.centre, 1.5, 100 + chain));
+            pilots.push_back(startChain(fit.centre, factor, factor, fit.centre, 1.5, 100 + chain, 0));
         const Positions points = run(pilots, kPilotWarmUp, kPilotDraws);
         if (stopped())
             return;
@@ -71,9 +71,12 @@ public:
         Matrix pilotFactor;
         if (!cholesky(metric, pilotFactor))
             pilotFactor = factor;
+        double step = 0;
+        for (const HamiltonianChain& pilot : pilots)
+            step += pilot.stepSize() / static_cast<double>(pilots.size());
         for (int chain = 0; chain < settings_.chains; ++chain) {
             const auto& last = points[static_cast<std::size_t>(chain)].back();
-            chains_.push_back(startChain(mean, pilotFactor, factor, last, 0.0, 200 + chain));
+            chains_.push_back(startChain(mean, pilotFactor, factor, last, 0.0, 200 + chain, step));
         }
         (void)run(chains_, settings_.warmUp, 0);
     }
@@ -104,7 +107,8 @@ public:
 
 private:
     HamiltonianChain startChain(const std::vector<double>& centre, const Matrix& metric, const Matrix& spread,
-                                const std::vector<double>& around, double factor, int part) const {
+                                const std::vector<double>& around, double factor, int part,
+                                double firstStep) const {
         Random random(deriveSeed(settings_.seed, static_cast<std::uint64_t>(part)));
         std::vector<double> start = around;
         std::vector<double> normals(start.size());
@@ -113,7 +117,7 @@ private:
         for (std::size_t i = 0; i < start.size(); ++i)
             for (std::size_t j = 0; j <= i; ++j)
                 start[i] += spread(i, j) * normals[j];
-        return HamiltonianChain(density_, centre, metric, start, random.bits(), {});
+        return HamiltonianChain(density_, centre, metric, start, random.bits(), {.firstStep = firstStep});
     }
 
     Positions run(std::vector<HamiltonianChain>& chains, int warmUp, int draws) const {
@@ -186,7 +190,7 @@ std::vector<ScalarSummary> summariesOf(const ResponseModel& model, const Draws& 
     if (model.sideBiasDeviation > 0)
         summaries.push_back(
             summarise("side bias", chainsOf(n, chains, [&](std::size_t i) { return draws.sideBias[i]; })));
-    for (std::size_t k = model.cannotTell ? 0 : 1; k < draws.cuts.columns; ++k)
+    for (std::size_t k = model.cannotTell ? 0 : 1; k < draws.cuts.columns && model.gapDeviation > 0; ++k)
         summaries.push_back(summarise("cut " + std::to_string(k),
                                       chainsOf(n, chains, [&](std::size_t i) { return draws.cuts(i, k); })));
     return summaries;
@@ -258,6 +262,20 @@ Draws drawPrior(const ResponseModel& model, int count, std::uint64_t seed) {
         std::copy_n(natural.begin() + static_cast<std::ptrdiff_t>(d) + 1, k, draws.cuts.row(i).begin());
     }
     return draws;
+}
+
+std::vector<double> meanDirection(const Draws& draws) {
+    std::vector<double> mean(draws.weights.columns, 0.0);
+    for (std::size_t i = 0; i < draws.count(); ++i) {
+        const auto row = draws.weights.row(i);
+        const double length = std::sqrt(dot(row, row));
+        for (std::size_t j = 0; j < mean.size() && length > 0; ++j)
+            mean[j] += row[j] / length;
+    }
+    const double length = std::sqrt(dot(mean, mean));
+    for (double& value : mean)
+        value = length > 0 ? value / length : 0.0;
+    return mean;
 }
 
 } // namespace whichway

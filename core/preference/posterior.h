@@ -36,8 +36,9 @@ struct ScalarSummary {
 struct Posterior {
     Draws draws = {}; ///< chains one after another
     int chains = 0;
-    std::vector<ScalarSummary> summaries =
-        {}; ///< w_1 … w_d, "sensitivity" |w|, "side bias", cuts beyond a fixed 0
+    /// "weight 1" … "weight d", "sensitivity" |w|, "side bias", "cut 0" … "cut K-1", without those that the
+    /// model fixes.
+    std::vector<ScalarSummary> summaries = {};
     /// Every R-hat below 1.01 and every bulk and tail effective sample size at least 400: else it is not
     /// shown without saying so.
     bool converged = false;
@@ -45,7 +46,7 @@ struct Posterior {
 
 struct SamplerSettings {
     int chains = 4;
-    int warmUp = 150; ///< iterations per chain, discarded
+    int warmUp = 80; ///< iterations per chain, discarded
     int drawsPerChain = 1000;
     std::uint64_t seed = 1;
     /// Summarise, and where the summaries show no convergence go on, up to eight times the draws, which are
@@ -53,13 +54,19 @@ struct SamplerSettings {
     bool diagnose = true;
 };
 
-/// Hamiltonian Monte Carlo whitened by an empirical-Bayes Laplace fit. Same input, same bits, on any machine.
-/// @return kCancelled if stop was requested. With no responses the draws are of the prior.
-/// @throws std::invalid_argument for a response whose length or answer does not fit the model.
+/// Hamiltonian Monte Carlo in coordinates whose prior is standard normal, whitened first by an
+/// empirical-Bayes Laplace fit, then by the covariance of a short pilot run, which is discarded. Same input,
+/// same bits, on any machine. With no responses the draws are of the prior.
+/// @return kCancelled if stop was requested (polled at each move of a chain).
+/// @throws std::invalid_argument for a model or settings out of range, or a response that does not fit.
 Result<Posterior> samplePosterior(const ResponseModel& model, std::span<const Response> responses,
                                   const SamplerSettings& settings, std::stop_token stop = {});
 
 /// `count` independent draws of the prior.
+/// @throws std::invalid_argument if the model is out of range or count < 1.
 Draws drawPrior(const ResponseModel& model, int count, std::uint64_t seed);
+
+/// The mean of the draws' directions w / |w|, scaled to length 1; zeros if the directions cancel.
+std::vector<double> meanDirection(const Draws& draws);
 
 } // namespace whichway

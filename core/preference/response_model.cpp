@@ -13,6 +13,20 @@ double ResponseModel::weightScale() const {
     return weightDeviation > 0 ? weightDeviation : 2.45 / std::sqrt(static_cast<double>(dimension));
 }
 
+void requireSound(const ResponseModel& model) {
+    const auto within = [](double value, double low, double high) { return value >= low && value <= high; };
+    if (model.dimension < 1 || model.levels < 1 || model.levels > 7)
+        throw std::invalid_argument("ResponseModel: needs at least 1 feature and 1 to 7 levels");
+    if (!within(model.lapse, 0, 0.2))
+        throw std::invalid_argument("ResponseModel: the lapse must lie in [0, 0.2]");
+    if (!within(model.weightDeviation, 0, 1e6) || !within(model.scaleDeviation, 0, 10) ||
+        !within(model.sideBiasDeviation, 0, 1e6) || !within(model.gapDeviation, 0, 10))
+        throw std::invalid_argument("ResponseModel: a prior deviation is out of range");
+    for (const double median : {model.firstGapMedian, model.laterGapMedian, model.zeroCutMedian})
+        if (!within(median, 1e-6, 1e6))
+            throw std::invalid_argument("ResponseModel: a prior median is out of range");
+}
+
 double responseProbability(const ResponseModel& model, double eta, std::span<const double> cuts, int answer) {
     const int level = std::abs(answer);
     if (level > model.levels || (level == 0 && !model.cannotTell) ||

@@ -30,12 +30,16 @@ struct ResponseModel {
     double weightDeviation = 0;   ///< s > 0; 0 means 2.45 / sqrt(d)
     double scaleDeviation = 0.6;  ///< of h; 0 fixes the scale
     double sideBiasDeviation = 1; ///< of delta; 0 leaves the side bias out
-    double firstGapMedian = 0.8, laterGapMedian = 1.4, zeroCutMedian = 0.3, gapDeviation = 0.7;
+    double firstGapMedian = 0.8, laterGapMedian = 1.4, zeroCutMedian = 0.3;
+    double gapDeviation = 0.7; ///< of the logarithms of c_0 and of the gaps; 0 fixes the cut points
 
     int categories() const { return 2 * levels + (cannotTell ? 1 : 0); }
     double weightScale() const; ///< s
     bool operator==(const ResponseModel&) const = default;
 };
+
+/// @throws std::invalid_argument if a member of the model is out of its range or not finite.
+void requireSound(const ResponseModel& model);
 
 /// P(answer | eta, cuts) with the lapse. `cuts` holds c_0 … c_{K-1}.
 /// @throws std::invalid_argument if the answer is not one of the model's.

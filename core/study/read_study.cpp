@@ -111,7 +111,7 @@ private:
             sceneNames_.push_back(reading.scene.name);
             scenes_.push_back(std::move(reading.scene));
         }
-        scenesRead_ = scenes_.size() == study_.scenePaths.size();
+        scenesRead_ = study_.scenesKnown && scenes_.size() == study_.scenePaths.size();
     }
 
     void readTrajectories() {

@@ -102,7 +102,8 @@ void readHead(StudySection& root, StudyFile& study) {
                 {study.scenePaths[i]});
         study.places.set(fmt::format("scenes.{}", i), places[i]);
     }
-    std::erase_if(study.scenePaths, [](const std::string& path) { return !isScenePath(path); });
+    study.scenesKnown =
+        std::erase_if(study.scenePaths, [](const std::string& path) { return !isScenePath(path); }) == 0;
 }
 
 void readAnswers(StudySection& root, Protocol& protocol) {

@@ -25,7 +25,8 @@ private:
 
 /// What study.toml says, before motions and tables are looked at.
 struct StudyFile {
-    bool isToml = false; ///< false: nothing could be read
+    bool isToml = false;      ///< false: nothing could be read
+    bool scenesKnown = false; ///< false: some scene path is at fault and not in `scenePaths`
     /// All but `hash`, `table` and `scenes`.
     Protocol protocol = {};
     std::vector<std::string> scenePaths = {}; ///< as written, checked to be plain relative paths

@@ -75,6 +75,24 @@ TEST(StudyReading, ReportsEveryMotionThatAMeasureIsNotDefinedFor) {
     EXPECT_EQ(reading.problems[1].place.file, "trajectories/m5.csv");
 }
 
+TEST(StudyReading, DoesNotBlameTheTablesForScenesThatCouldNotBeRead) {
+    for (const auto& spoil : {toml("levels = 2", "levels = "), toml("scenes/room.toml", "../room.toml"),
+                              toml("scenes/room.toml", "scenes/hall.toml")}) {
+        TinyStudy study = studyWithAPerson();
+        std::string rows = "trajectory,role,scene\n";
+        for (const char* name : {"c1", "c2", "m1", "m2", "m3", "m4", "m5", "m6", "p1", "p2"})
+            rows += fmt::format("{},{},room\n", name,
+                                *name == 'm'   ? "main"
+                                : *name == 'c' ? "catch"
+                                               : "practice");
+        study.files["library.csv"] = rows;
+        ASSERT_TRUE(readBack(study, "scenes_sound").ok());
+        spoil(study);
+        const StudyReading reading = readBack(study, "scenes_unread");
+        EXPECT_EQ(reading.problems.size(), 1u) << codesAndPlaces(reading.problems);
+    }
+}
+
 TEST(StudyReading, SaysWhenThereIsNoFolder) {
     const StudyReading reading = readStudy(RealFileSystem(), "/nowhere/at/all");
     ASSERT_EQ(reading.problems.size(), 1u);
