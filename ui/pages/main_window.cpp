@@ -69,6 +69,7 @@ MainWindow::MainWindow(QWidget* parent) : QMainWindow(parent) {
     study_->showNothing();
     showSessions({}, {});
     showTitle({});
+    goTo(Stop::Study);
 }
 
 QWidget* MainWindow::makeFrame() {
@@ -93,8 +94,10 @@ QWidget* MainWindow::makeFrame() {
     column->addLayout(top);
     column->addWidget(makePageRule());
     pages_ = new QStackedWidget;
-    for (QWidget* page : std::initializer_list<QWidget*>{study_, rehearsal_, bench_, review_, cohort_})
+    for (QWidget* page : std::initializer_list<QWidget*>{study_, rehearsal_, bench_, review_, cohort_}) {
+        page->setFocusPolicy(Qt::ClickFocus);
         pages_->addWidget(page);
+    }
     column->addWidget(pages_, 1);
     foot_ = new TitleBlock;
     column->addWidget(foot_);
@@ -167,6 +170,7 @@ void MainWindow::goTo(Stop stop) {
     route_->setCurrent(stop);
     pages_->setCurrentIndex(static_cast<int>(stop));
     // The bench has its action bar at the foot.
+    pages_->currentWidget()->setFocus(Qt::OtherFocusReason);
     foot_->setVisible(stop != Stop::Bench || !benchPage_);
 }
 
