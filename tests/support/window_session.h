@@ -16,8 +16,8 @@
 
 namespace whichway {
 
-/// A session in real windows: the stage and the bench over a real conductor, with a clock that moves only when told
-/// to, plans made at once, and a file system in memory. Keys and clicks go where a person's would.
+/// A session in real windows: the stage and the bench over a real conductor, with a clock that moves only
+/// when told to, plans made at once, and a file system in memory. Keys and clicks go where a person's would.
 class WindowSession : public ::testing::Test {
 protected:
     Study study = smallStudy();
@@ -37,7 +37,8 @@ protected:
 
     void begin(std::uint64_t seed = 5) {
         close();
-        auto begun = SessionController::begin(parts(), {.kind = SessionKind::Pilot, .code = "K7", .seed = seed});
+        auto begun =
+            SessionController::begin(parts(), {.kind = SessionKind::Pilot, .code = "K7", .seed = seed});
         ASSERT_TRUE(begun.ok()) << describe(begun.error());
         controller = std::move(*begun);
         openWindows();

@@ -1,5 +1,6 @@
 // SPDX-License-Identifier: GPL-3.0-or-later
-// The main of test programs that open windows: without a screen, and always with the same fonts' sizes and theme.
+// The main of test programs that open windows: without a screen, and always with the same fonts' sizes and
+// theme.
 #include "ui/look/style.h"
 
 #include <QApplication>

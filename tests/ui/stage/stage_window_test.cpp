@@ -240,7 +240,8 @@ TEST_F(Stage, StandsGreyBetweenTwoPairs) {
     EXPECT_EQ(kind(), PromptKind::Trial);
 }
 
-// WCAG 2.2, 2.5.5 (enhanced): targets of at least 44 by 44 px; ISO 9241-3 by way of the character height at 0.6 m: 19 px.
+// WCAG 2.2, 2.5.5 (enhanced): targets of at least 44 by 44 px; ISO 9241-3 by way of the character height at
+// 0.6 m: 19 px.
 TEST_F(Stage, HasLargeTargetsLargeTextAndNamesForEveryControl) {
     study.protocol.cannotTell = true;
     begin();
@@ -277,15 +278,18 @@ TEST_F(Stage, OverlapsNothingAndMirrorsAboutItsMiddle) {
         const QRect right = part(*stage, "stage.chooseRight")->geometry();
         EXPECT_EQ(left.size(), right.size());
         EXPECT_EQ(left.left(), size.width() - 1 - right.right());
-        EXPECT_EQ(part(*stage, "stage.undo")->x(), size.width() - part(*stage, "stage.stop")->geometry().right() - 1);
+        EXPECT_EQ(part(*stage, "stage.undo")->x(),
+                  size.width() - part(*stage, "stage.stop")->geometry().right() - 1);
         std::vector<std::pair<QString, QRect>> outlines;
         for (const auto* child : stage->findChildren<QWidget*>(QString(), Qt::FindDirectChildrenOnly))
             if (child->isVisible() && !qobject_cast<const QLabel*>(child)) {
-                const int ring = qobject_cast<const QAbstractButton*>(child) || child->objectName() == "stage.confidence" ||
+                const int ring = qobject_cast<const QAbstractButton*>(child) ||
+                                         child->objectName() == "stage.confidence" ||
                                          child->objectName() == "stage.pair"
                                      ? 8
                                      : 0;
-                outlines.emplace_back(child->objectName(), child->geometry().adjusted(ring, ring, -ring, -ring));
+                outlines.emplace_back(child->objectName(),
+                                      child->geometry().adjusted(ring, ring, -ring, -ring));
             }
         for (std::size_t i = 0; i < outlines.size(); ++i) {
             EXPECT_TRUE(stage->rect().contains(outlines[i].second)) << outlines[i].first.toStdString();
