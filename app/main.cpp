@@ -28,6 +28,7 @@ struct CommandLine {
     CLI::App* reporting = nullptr;
     CLI::App* replaying = nullptr;
     CLI::App* making = nullptr;
+    CLI::Option* agreement = nullptr;
 
     CommandLine() {
         program.set_help_flag("-h,--help", "Show this help");
@@ -39,6 +40,15 @@ struct CommandLine {
         addReport();
         addReplay();
         addMakeLibrary();
+    }
+
+    /// @throws CLI::ValidationError for an option that the chosen source of answers would ignore
+    void refuseWhatHasNoEffect() const {
+        const bool simulated = conducting.answers == AnswersFrom::Simulated;
+        if (agreement->count() > 0 && !simulated)
+            throw CLI::ValidationError("--agreement", "is for --answers simulated only");
+        if (conducting.interval && conducting.answers != AnswersFrom::Stdio)
+            throw CLI::ValidationError("--interval", "is for --answers stdio only");
     }
 
 private:
@@ -68,7 +78,7 @@ private:
         command->add_option_function<std::uint64_t>(
             "--seed", [this](const std::uint64_t& seed) { conducting.seed = seed; },
             "Seed of the schedule, the plans and the simulated participant; default: by chance");
-        CLI::Option* agreement =
+        agreement =
             command->add_option("--agreement", conducting.agreement,
                                 "Share of random pairs on which the simulated participant gives the same "
                                 "answer twice, default 0.85");
@@ -112,6 +122,7 @@ int main(int argc, char** argv) {
     CommandLine given;
     try {
         given.program.parse(argc, argv);
+        given.refuseWhatHasNoEffect();
     } catch (const CLI::Success& wish) { // help or version
         return given.program.exit(wish);
     } catch (const CLI::ParseError& error) {

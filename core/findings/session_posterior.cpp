@@ -26,18 +26,22 @@ std::string_view bitsOf(const std::vector<double>& values) {
 
 } // namespace
 
+std::vector<double> standardisedDifference(const Protocol& protocol, const std::string& left,
+                                           const std::string& right) {
+    const auto a = standardisedFeatures(protocol, left), b = standardisedFeatures(protocol, right);
+    std::vector<double> difference;
+    for (std::size_t j = 0; j < a.size() && j < b.size(); ++j)
+        difference.push_back(a[j] - b[j]);
+    return difference;
+}
+
 std::vector<Response> mainResponses(const SessionState& state) {
     std::vector<Response> responses;
-    for (const AnsweredTrial& answer : state.answers) {
-        if (answer.kind != TrialKind::Main)
-            continue;
-        const auto left = standardisedFeatures(state.began.protocol, answer.left);
-        const auto right = standardisedFeatures(state.began.protocol, answer.right);
-        Response response{.answer = answer.answer};
-        for (std::size_t j = 0; j < left.size() && j < right.size(); ++j)
-            response.difference.push_back(left[j] - right[j]);
-        responses.push_back(std::move(response));
-    }
+    for (const AnsweredTrial& answer : state.answers)
+        if (answer.kind == TrialKind::Main)
+            responses.push_back(
+                {.difference = standardisedDifference(state.began.protocol, answer.left, answer.right),
+                 .answer = answer.answer});
     return responses;
 }
 

@@ -6,9 +6,14 @@
 #include "core/result.h"
 
 #include <stop_token>
+#include <string>
 #include <vector>
 
 namespace whichway {
+
+/// z_left - z_right; empty if one of the motions is not of the main library.
+std::vector<double> standardisedDifference(const Protocol& protocol, const std::string& left,
+                                           const std::string& right);
 
 /// The standing answers that teach the weights, in order: main trials and no others.
 std::vector<Response> mainResponses(const SessionState& state);

@@ -1,0 +1,53 @@
+// SPDX-License-Identifier: GPL-3.0-or-later
+#include "app/commands/report.h"
+
+#include "app/terminal.h"
+#include "core/findings/session_findings.h"
+#include "core/journal/journal.h"
+#include "core/journal/session_state.h"
+#include "ui/report/session_report.h"
+
+#include <QApplication>
+#include <cstdlib>
+
+namespace whichway {
+namespace {
+
+Result<void> writeReport(FileSystem& files, const SessionFolder& session, const std::string& folder) {
+    const auto reading = readJournal(files, session.journal());
+    if (!reading)
+        return reading.error();
+    const auto state = replayRecords(reading->records);
+    if (!state)
+        return state.error();
+    const auto findings = findSession(*state);
+    if (!findings)
+        return findings.error();
+    return writeSessionReport(files, *state, *findings, session.code, folder);
+}
+
+} // namespace
+
+Result<std::string> writeReportBeside(FileSystem& files, const SessionFolder& session) {
+    const std::string folder = session.path + "/report";
+    if (auto written = writeReport(files, session, folder); !written)
+        return written.error();
+    return folder;
+}
+
+int report(const std::string& sessionPath, const std::string& folder, int argc, char** argv) {
+    RealFileSystem files;
+    const auto session = openSessionFolder(files, sessionPath);
+    if (!session)
+        return complain(session.error());
+    // Charts are drawn by the window system's library, which can do without a display.
+    if (!std::getenv("DISPLAY") && !std::getenv("WAYLAND_DISPLAY"))
+        ::setenv("QT_QPA_PLATFORM", "offscreen", 0);
+    const QApplication application(argc, argv);
+    if (auto written = writeReport(files, *session, folder); !written)
+        return complain(written.error());
+    say(folder + "/report.html");
+    return kDone;
+}
+
+} // namespace whichway
