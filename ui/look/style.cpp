@@ -1,6 +1,8 @@
 // SPDX-License-Identifier: GPL-3.0-or-later
 #include "ui/look/style.h"
 
+#include "ui/look/icons.h"
+
 #include <QApplication>
 #include <QLabel>
 #include <QStyleFactory>
@@ -77,6 +79,7 @@ void applyLook(QApplication& application, Theme theme) {
     initIcons();
     QApplication::setStyle(QStyleFactory::create(QStringLiteral("Fusion")));
     QApplication::setPalette(paletteOf(theme));
+    QApplication::setWindowIcon(iconOf(Icon::Way, coloursOf(theme).accent));
     application.setStyleSheet(styleSheetOf(coloursOf(theme)));
 }
 

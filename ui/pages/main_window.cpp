@@ -32,7 +32,6 @@ QString homeShortened(const std::string& folder) {
 MainWindow::MainWindow(QWidget* parent) : QMainWindow(parent) {
     setObjectName(QStringLiteral("main"));
     setWindowTitle(tr("Whichway"));
-    setWindowIcon(iconOf(Icon::Way, coloursOf(palette()).accent));
     setMinimumSize(1180, 700);
     resize(1440, 900);
     study_ = new StudyPage;
@@ -155,12 +154,16 @@ void MainWindow::showSessions(const std::vector<SessionRow>& sessions, const std
 void MainWindow::setBenchPage(QWidget* page) {
     if (benchPage_) {
         bench_->removeWidget(benchPage_);
-        benchPage_->deleteLater();
+        delete benchPage_; // at once, for the session that it shows may be about to go
     }
     benchPage_ = page;
     if (page)
         bench_->addWidget(page);
     bench_->setCurrentWidget(page ? page : noBench_);
+    if (page)
+        goTo(Stop::Bench);
+    else
+        foot_->show();
 }
 
 void MainWindow::goTo(Stop stop) {

@@ -62,6 +62,7 @@ void fitColumns(QTableView& table) {
         table.setColumnWidth(column, widest + 24);
     }
     table.setColumnWidth(LibraryModel::kPath, 150);
+    table.horizontalHeader()->setSectionResizeMode(LibraryModel::kPath, QHeaderView::Stretch);
     int tallest = 0;
     for (int column = 0; column < table.model()->columnCount(); ++column) {
         const QRect room(0, 0, table.columnWidth(column) - 18, 1000);

@@ -26,6 +26,7 @@ TEST(Numbers, CarryTheirUnit) {
     EXPECT_EQ(withUnit(3, 1, "s").toStdString(), "3.0\u00a0s");
     EXPECT_EQ(withUnit(1.25, 2, "1").toStdString(), "1.25");
     EXPECT_EQ(unitText("m/s^3").toStdString(), "m/s\u00b3");
+    EXPECT_EQ(unitText("m/s2").toStdString(), "m/s\u00b2");
     EXPECT_EQ(unitText("1").toStdString(), "");
 }
 

@@ -158,6 +158,25 @@ TEST_F(Stage, ShowsAPauseAndThenThePairFromItsStart) {
     EXPECT_EQ(onDisk().pauses, 1);
 }
 
+TEST_F(Stage, LetsTheParticipantPause) {
+    begin();
+    toTrial();
+    stage->grab();
+    run(0.5);
+    key(Qt::Key_P);
+    ASSERT_TRUE(onDisk().paused.has_value());
+    EXPECT_EQ(onDisk().paused->reason, "participant");
+    click("stage.goOn");
+    EXPECT_FALSE(onDisk().paused.has_value());
+    answerByKeys(2);
+    click("stage.pause"); // between the answer and the next pair, too
+    key(Qt::Key_Space);
+    EXPECT_EQ(kind(), PromptKind::Saved);
+    EXPECT_TRUE(isEnabled("stage.next"));
+    goOn();
+    EXPECT_EQ(kind(), PromptKind::Trial);
+}
+
 TEST_F(Stage, ShowsAnAnswerAsSavedOnlyWhenItIsAndTriesAgain) {
     begin();
     toTrial();
