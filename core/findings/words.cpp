@@ -39,8 +39,21 @@ std::string spokenNumber(double value) {
     return std::isfinite(value) ? withTrueMinus(fmt::format("{:g}", value)) : beyondNumbers(value);
 }
 
+std::string readableUnit(const std::string& unit) {
+    if (unit == "1")
+        return {};
+    std::string readable;
+    for (const char c : unit)
+        if (c == '2' || c == '3')
+            readable += c == '2' ? "\u00b2" : "\u00b3";
+        else
+            readable += c;
+    return readable;
+}
+
 std::string spokenQuantity(const std::string& number, const std::string& unit) {
-    return unit.empty() || unit == "1" ? number : number + "\u00a0" + unit;
+    const std::string readable = readableUnit(unit);
+    return readable.empty() ? number : number + "\u00a0" + readable;
 }
 
 std::string spokenRange(double low, double high, int decimals, const std::string& unit) {

@@ -14,6 +14,8 @@ int decimalsFor(double width);
 std::string spokenNumber(double value, int decimals);
 /// The shortest plain form: "0.1", "25".
 std::string spokenNumber(double value);
+/// A unit as people write it: "m/s³" for "m/s3"; empty for "1".
+std::string readableUnit(const std::string& unit);
 /// "1.3 s".
 std::string spokenQuantity(const std::string& number, const std::string& unit);
 /// "1.9 to 5.0 s".
