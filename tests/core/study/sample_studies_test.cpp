@@ -54,5 +54,20 @@ TEST(GivenFeaturesSample, IsWhatItsRecipeMakes) {
         EXPECT_TRUE(contentOf(kSamples + "given_features/" + path) == content) << path;
 }
 
+TEST(WardCartSample, IsReadMeasuredAndWithoutWarnings) {
+    const StudyReading reading = readStudy(RealFileSystem(), kSamples + "ward_cart");
+    ASSERT_TRUE(reading.ok()) << describeAll(reading.problems);
+    const Study& study = reading.study;
+    EXPECT_TRUE(study.protocol.invented);
+    EXPECT_GE(study.protocol.table.motions.size(), 240u);
+    for (const FeatureDefinition& feature : study.protocol.features)
+        EXPECT_FALSE(feature.measure.empty()) << feature.name;
+    for (const Trajectory& motion : study.motions) {
+        EXPECT_NE(study.sceneOf(motion), nullptr) << motion.name;
+        EXPECT_LE(motion.duration(), 10 + 1e-9) << motion.name;
+    }
+    EXPECT_THAT(warningsOf(study), testing::IsEmpty());
+}
+
 } // namespace
 } // namespace whichway
