@@ -15,7 +15,7 @@
 namespace whichway {
 namespace {
 
-constexpr double kHead = 20, kFoot = 18, kLeft = 34, kRight = 8;
+constexpr double kHead = 26, kFoot = 18, kLeft = 34, kRight = 8;
 constexpr int kBandAlpha = 36;
 
 /// Heading, grid and tick texts; the curves are the chart's own.

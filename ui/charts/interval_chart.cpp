@@ -107,14 +107,34 @@ private:
 
         painter.setFont(style_.text);
         painter.setPen(colours.ink);
-        painter.drawText(
-            QPointF(0, y + 4),
-            QFontMetricsF(style_.text).elidedText(row.label, Qt::ElideRight, plot_.labelWidth - 6));
+        const QStringList lines = linesOf(row.label);
+        for (qsizetype i = 0; i < lines.size(); ++i)
+            painter.drawText(QPointF(0, y + 4 + (static_cast<double>(i) - 0.5 * (lines.size() - 1)) * 13),
+                             lines[i]);
         if (row.value.isEmpty())
             return;
         painter.setFont(style_.label);
         painter.setPen(colours.ink2);
         painter.drawText(QPointF(chart_->rect().right() - plot_.valueWidth + 10, y + 4), row.value);
+    }
+
+    /// A name that is too long for its room takes two lines; what is longer still is cut short.
+    QStringList linesOf(const QString& label) const {
+        const QFontMetricsF metrics(style_.text);
+        if (metrics.horizontalAdvance(label) <= plot_.labelWidth)
+            return {label};
+        const QStringList words = label.split(QLatin1Char(' '));
+        QString first = words.front();
+        qsizetype used = 1;
+        while (used < words.size() &&
+               metrics.horizontalAdvance(first + QLatin1Char(' ') + words[used]) <= plot_.labelWidth)
+            first += QLatin1Char(' ') + words[used++];
+        const auto cut = [&](const QString& line) {
+            return metrics.elidedText(line, Qt::ElideRight, plot_.labelWidth);
+        };
+        if (used == words.size())
+            return {cut(first)};
+        return {cut(first), cut(words.mid(used).join(QLatin1Char(' ')))};
     }
 
     QChart* chart_;

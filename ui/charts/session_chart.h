@@ -22,7 +22,7 @@ struct SessionPlot {
     std::vector<Trial> trials = {};    ///< in the order they were answered
     std::vector<int> breaksAfter = {}; ///< counts of trials
     QString timeLabel = {}, trialLabel = {};
-    double labelWidth = 74; ///< px
+    double labelWidth = 92; ///< px
     double height() const;
 };
 

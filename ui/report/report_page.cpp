@@ -140,7 +140,8 @@ void ReportPage::tradeOffs() {
         out_.open("table", {{"class", QStringLiteral("trades")}, {"aria-label", tr("Trade-offs")}})
             .open("tbody");
         for (const TradeOff& tradeOff : found) {
-            out_.open("tr");
+            out_.open("tr",
+                      tradeOff.featureSignProbability < kSignDetermined ? QStringLiteral("open") : QString());
             out_.line("td", QString::fromStdString(tradeOff.give));
             out_.line("td", tr("for %1").arg(QString::fromStdString(tradeOff.forWhat)));
             out_.line("td", QString::fromStdString(tradeOff.range));
@@ -148,15 +149,16 @@ void ReportPage::tradeOffs() {
         }
         out_.close().close();
         out_.line("p",
-                  tr("Medians with 90 % intervals; an interval that reaches below 0 leaves open which way "
-                     "it goes. Weights hold within this library and its scaling and are not comparable "
-                     "with other studies."),
+                  tr("Medians with 90 % intervals; grey where it is open which way it goes. Weights hold "
+                     "within this library and its scaling and are not comparable with other studies."),
                   QStringLiteral("side"));
     } else {
-        for (const TradeOff& tradeOff : found)
-            out_.line("p", QString::fromStdString(tradeOff.sentence));
-        if (found.empty())
-            out_.line("p", tr("There is no second feature to trade."));
+        out_.line("p",
+                  found.empty()
+                      ? tr("There is no second feature to trade.")
+                      : tr("Not determined: whether more or less of it is liked is certain only to %1, and "
+                           "0.99 is asked for. More answers would mend it.")
+                            .arg(numberText(std::floor(100 * found.front().signProbability) / 100, 2)));
     }
     out_.close();
 }
@@ -186,7 +188,7 @@ void ReportPage::consistency() {
 
 void ReportPage::prediction() {
     const Prediction& found = findings_.prediction;
-    out_.open("div").line("h2", tr("Prediction and the reachable range"));
+    out_.open("div").line("h2", tr("Prediction"));
     const IntervalPlot plot = predictionPlot(findings_);
     if (!plot.rows.empty())
         out_.drawing(intervalImage(plot, style_, kHalf, tr("Held-out accuracy and repeat agreement")));
@@ -209,9 +211,11 @@ void ReportPage::prediction() {
         side += tr(" %1 answered “cannot tell” and are in no share.").arg(found.heldOut.cannotTell);
     if (found.reachable)
         side +=
-            tr(" Given how often repeats were answered alike, the best reachable accuracy lies between "
-               "%1 % and %2 %.")
-                .arg(numberText(100 * found.reachable->low, 0), numberText(100 * found.reachable->high, 0));
+            tr(" If %1 of %2 repeats answered alike were the person's true agreement, the best reachable "
+               "accuracy would lie between %3 % and %4 %.")
+                .arg(QString::number(findings_.consistency.repeats.count),
+                     QString::number(findings_.consistency.repeats.of),
+                     numberText(100 * found.reachable->low, 0), numberText(100 * found.reachable->high, 0));
     else if (findings_.consistency.repeats.of > 0)
         side += tr(" Repeats agreed less often than by chance, so no reachable range follows from them.");
     out_.line("p", side, QStringLiteral("side")).close();
@@ -227,7 +231,7 @@ void ReportPage::course() {
         .close();
     out_.open("div", QStringLiteral("courses"));
     for (const CoursePlot& plot : coursePlots(state_.began.protocol, findings_))
-        out_.drawing(courseImage(plot, style_, {kThird, 118}, tr("Course of %1").arg(plot.heading)));
+        out_.drawing(courseImage(plot, style_, {kThird, 124}, tr("Course of %1").arg(plot.heading)));
     out_.close().close();
 }
 

@@ -15,6 +15,8 @@ struct Words {
     Q_DECLARE_TR_FUNCTIONS(ReportPlots)
 };
 
+constexpr double kNames = 128; // px, for the names of features
+
 double certaintyOf(const WeightFinding& weight) {
     return std::max(weight.positive, 1 - weight.positive);
 }
@@ -47,11 +49,16 @@ QString signed1(double value) {
 } // namespace
 
 IntervalPlot weightsPlot(const Protocol& protocol, const WeightFindings& weights) {
-    IntervalPlot plot{.from = -1, .to = 1, .reference = 0.0, .labelWidth = 142};
+    double furthest = 0.5;
+    for (const WeightFinding& weight : weights.features)
+        furthest = std::max({furthest, -weight.direction.low, weight.direction.high});
+    const double end = std::min(1.0, std::ceil(furthest * 10) / 10);
+    IntervalPlot plot{.from = -end, .to = end, .reference = 0.0, .labelWidth = kNames, .rowHeight = 29};
     plot.below = Words::tr("rather less");
     plot.above = Words::tr("rather more");
     for (const double at : {-1.0, -0.5, 0.0, 0.5, 1.0})
-        plot.ticks.push_back({.at = at, .text = signed1(at)});
+        if (std::abs(at) <= end)
+            plot.ticks.push_back({.at = at, .text = signed1(at)});
     for (const WeightFinding& weight : weights.features)
         plot.rows.push_back({.label = labelOf(protocol, weight.feature),
                              .median = weight.direction.median,
@@ -63,7 +70,7 @@ IntervalPlot weightsPlot(const Protocol& protocol, const WeightFindings& weights
 
 IntervalPlot sensitivityPlot(const WeightFindings& weights) {
     const auto ends = doublingsAround(weights.sensitivity.low, weights.sensitivity.high);
-    IntervalPlot plot{.from = ends.first, .to = ends.second, .logarithmic = true, .labelWidth = 142};
+    IntervalPlot plot{.from = ends.first, .to = ends.second, .logarithmic = true, .labelWidth = kNames};
     for (const double at : doublingTicks(ends))
         plot.ticks.push_back({.at = at, .text = QString::number(at)});
     plot.rows.push_back({.label = Words::tr("Sensitivity"),

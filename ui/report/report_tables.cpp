@@ -48,8 +48,8 @@ QString wordsUsed(const SessionState& state, const Consistency& consistency) {
 QString unevenSplit(int of) {
     for (int fewer = of / 2; fewer >= 0; --fewer)
         if (evenSplitProbability(fewer, of) < 0.05)
-            return Words::tr("%1 or fewer, %2 or more").arg(fewer).arg(of - fewer);
-    return Words::tr("too few to judge");
+            return Words::tr("≤ %1 or ≥ %2").arg(fewer).arg(of - fewer);
+    return Words::tr("too few");
 }
 
 QString parameterText(const Protocol& protocol, const std::string& name) {
@@ -91,33 +91,33 @@ void write(Markup& out, const ReportTable& table) {
 ReportTable consistencyTable(const SessionState& state, const SessionFindings& findings) {
     const Consistency& found = findings.consistency;
     ReportTable table{.name = Words::tr("Consistency checks"),
+                      .cssClass = QStringLiteral("checks"),
                       .headings = {Words::tr("Check"), Words::tr("Found"), Words::tr("Look again at")}};
     table.rows.push_back(
         {Words::tr("Left chosen"),
          Words::tr("%1 (p = %2)").arg(ofText(found.left), numberText(found.leftProbability, 2)),
          unevenSplit(found.left.of)});
     if (findings.model.sideBiasDeviation > 0)
-        table.rows.push_back({Words::tr("Side bias δ, above 0 for left"),
+        table.rows.push_back({Words::tr("Side bias δ"),
                               numberText(findings.sideBias.median, 2) + QStringLiteral(" (") +
                                   rangeText(findings.sideBias.low, findings.sideBias.high, 2) +
                                   QLatin1Char(')'),
                               Words::tr("interval without 0")});
     table.rows.push_back(
-        {Words::tr("Repeats answered alike"),
+        {Words::tr("Repeats alike"),
          found.repeats.of + found.repeats.cannotTell > 0 ? ofText(found.repeats) : Words::tr("none shown"),
          Words::tr("half or fewer")});
     table.rows.push_back(
-        {Words::tr("Catch pairs as expected"),
+        {Words::tr("Catch pairs"),
          found.catches.of + found.catches.cannotTell > 0 ? ofText(found.catches) : Words::tr("none shown"),
          Words::tr("any unexpected")});
-    table.rows.push_back({Words::tr("Identical pairs, left chosen"),
+    table.rows.push_back({Words::tr("Identical, left"),
                           found.identicalLeft.of + found.identicalLeft.cannotTell > 0
                               ? ofText(found.identicalLeft)
                               : Words::tr("none shown"),
                           Words::tr("not judged")});
     if (found.confidence.size() > 1)
-        table.rows.push_back(
-            {Words::tr("Words of confidence"), wordsUsed(state, found), Words::tr("one word in 9 of 10")});
+        table.rows.push_back({Words::tr("Words used"), wordsUsed(state, found), Words::tr("one in 9 of 10")});
     table.rows.push_back(
         {Words::tr("Response time"),
          found.medianResponseTime
@@ -128,7 +128,7 @@ ReportTable consistencyTable(const SessionState& state, const SessionFindings& f
         table.rows.push_back({Words::tr("Quick answers"), QString::number(found.quick),
                               Words::tr("below %1").arg(withUnit(found.quickBelow, 1, QStringLiteral("s")))});
     if (found.drift)
-        table.rows.push_back({Words::tr("Predicted, last third less first"),
+        table.rows.push_back({Words::tr("Predicted, drift"),
                               Words::tr("%1 points").arg(numberText(*found.drift, 0)),
                               Words::tr("below %1").arg(numberText(-20, 0))});
     return table;

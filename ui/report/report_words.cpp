@@ -108,23 +108,23 @@ QStringList modelTexts(const SessionFindings& findings) {
                                             .arg(QString::number(100 * model.lapse))
                                       : QString());
     lines << (model.scaleDeviation > 0
-                  ? Words::tr("Prior of the weights: w ~ N(0, s² e²ʰ), s = %1, h ~ N(0, %2²).")
+                  ? Words::tr("Prior of the weights: each w ~ N(0, s.d. s·eʰ), s = %1, h ~ N(0, s.d. %2).")
                         .arg(numberText(model.weightScale(), 3), QString::number(model.scaleDeviation))
-                  : Words::tr("Prior of the weights: w ~ N(0, s²), s = %1.")
+                  : Words::tr("Prior of the weights: each w ~ N(0, s.d. s), s = %1.")
                         .arg(numberText(model.weightScale(), 3)));
     if (model.sideBiasDeviation > 0)
-        lines << Words::tr("Prior of the side bias: δ ~ N(0, %1²).")
+        lines << Words::tr("Prior of the side bias: δ ~ N(0, s.d. %1).")
                      .arg(QString::number(model.sideBiasDeviation));
     if (model.levels > 1 || model.cannotTell) {
         QStringList cuts;
         if (model.cannotTell)
-            cuts << Words::tr("ln c[0] ~ N(ln %1, %2²)")
+            cuts << Words::tr("ln c[0] ~ N(ln %1, s.d. %2)")
                         .arg(QString::number(model.zeroCutMedian), QString::number(model.gapDeviation));
         if (model.levels > 1)
-            cuts << Words::tr("ln of the first gap ~ N(ln %1, %2²)")
+            cuts << Words::tr("ln of the first gap ~ N(ln %1, s.d. %2)")
                         .arg(QString::number(model.firstGapMedian), QString::number(model.gapDeviation));
         if (model.levels > 2)
-            cuts << Words::tr("of later gaps ~ N(ln %1, %2²)")
+            cuts << Words::tr("of later gaps ~ N(ln %1, s.d. %2)")
                         .arg(QString::number(model.laterGapMedian), QString::number(model.gapDeviation));
         lines << Words::tr("Priors of the cut points: %1.").arg(cuts.join(QStringLiteral(", ")));
     }
