@@ -96,7 +96,7 @@ void StageWindow::arrangePair() {
     int sideRoom = margin + sideWidth + 24;
     if (wide) {
         const int rowWidth = std::min(confidence_->sizeHint().width(), usable + 2 * kRing);
-        sureness_->setGeometry(margin, y - between(4, 0), usable, askHeight);
+        sureness_->setGeometry(margin, y - between(9, 4), usable, askHeight);
         sureness_->setAlignment(Qt::AlignCenter);
         y += askHeight;
         confidence_->setGeometry((width() - rowWidth) / 2, y - kRing, rowWidth, confidenceHeight + 2 * kRing);
