@@ -43,15 +43,23 @@ void ConfidenceRow::setWordsEnabled(bool enabled) {
     setFocusPolicy(enabled ? Qt::StrongFocus : Qt::NoFocus);
 }
 
+bool ConfidenceRow::isWide() const {
+    return words_.size() > kWordsBesideKeys;
+}
+
 QSize ConfidenceRow::sizeHint() const {
-    const bool above = words_.size() > kWordsBesideKeys;
-    int width = above ? 150 : kLeastWordWidth;
-    int height = above ? 104 : 72;
-    for (const StageButton* word : words_)
-        if (!above) {
+    int width = isWide() ? 120 : kLeastWordWidth;
+    int height = isWide() ? 112 : 72;
+    for (const StageButton* word : words_) {
+        if (!isWide()) {
             width = std::max(width, word->sizeHint().width());
             height = std::max(height, word->sizeHint().height());
+            continue;
         }
+        const QFontMetrics metrics(word->font());
+        for (const QString& part : word->text().split(QLatin1Char(' ')))
+            width = std::max(width, metrics.horizontalAdvance(part) + 2 * kRing + 20);
+    }
     return {width * static_cast<int>(words_.size()), height};
 }
 

@@ -17,6 +17,8 @@ public:
 
     void setChosenLevel(int level); ///< 0: none
     void setWordsEnabled(bool enabled);
+    /// Many words: they stand below their keys and need the whole width.
+    bool isWide() const;
     QSize sizeHint() const override;
 
 Q_SIGNALS:

@@ -52,8 +52,10 @@ void StageWindow::arrangePair() {
     const int bottomY = height() - between(16, 24) - bottomHeight;
     const int confidenceHeight = confidence_->sizeHint().height() - 2 * kRing;
     const int choiceHeight = scaled(between(56, 68)), replayHeight = scaled(between(46, 52));
-    const int underPanes = between(10, 20) + 8 + between(10, 18) + replayHeight + between(10, 20) +
-                           choiceHeight + between(12, 20) + confidenceHeight;
+    const bool wide = confidence_->isWide();
+    const int askHeight = wide ? scaled(32) : 0; // the question how sure stands above many words
+    const int underPanes = askHeight + between(10, 20) + 8 + between(10, 18) + replayHeight +
+                           between(10, 20) + choiceHeight + between(12, 20) + confidenceHeight;
     const int questionY = between(14, 30);
     const int questionHeight = std::max(question_->heightForWidth(usable), scaled(44));
     const int panesY = questionY + questionHeight + between(8, 22);
@@ -87,20 +89,29 @@ void StageWindow::arrangePair() {
         place(cannotTell_, x + choiceWidth + 16, y, block - 2 * choiceWidth - 32, choiceHeight);
     y += choiceHeight + between(12, 20);
 
-    const int nextWidth = outlineWidth(next_);
-    const int sides =
-        std::max({nextWidth, sureness_->fontMetrics().horizontalAdvance(sureness_->text()) + 8}) + 40;
-    const int rowWidth = std::min(confidence_->sizeHint().width(), usable - 2 * sides);
-    const int rowX = (width() - rowWidth) / 2;
-    confidence_->setGeometry(rowX, y - kRing, rowWidth, confidenceHeight + 2 * kRing);
-    sureness_->setGeometry(margin, y, rowX - margin - 24, confidenceHeight);
-    place(next_, rowX + rowWidth + 24, y + (confidenceHeight - scaled(56)) / 2, nextWidth, scaled(56));
-    hint_->setGeometry(margin, y, usable, confidenceHeight);
-
     const int sideWidth = std::max({scaled(200), outlineWidth(undo_), outlineWidth(stop_)});
     place(undo_, margin, bottomY, sideWidth, bottomHeight);
     place(stop_, width() - margin - sideWidth, bottomY, sideWidth, bottomHeight);
-    const int sideRoom = margin + sideWidth + 24;
+    const int nextWidth = outlineWidth(next_);
+    int sideRoom = margin + sideWidth + 24;
+    if (wide) {
+        const int rowWidth = std::min(confidence_->sizeHint().width(), usable + 2 * kRing);
+        sureness_->setGeometry(margin, y - between(9, 4), usable, askHeight);
+        sureness_->setAlignment(Qt::AlignCenter);
+        y += askHeight;
+        confidence_->setGeometry((width() - rowWidth) / 2, y - kRing, rowWidth, confidenceHeight + 2 * kRing);
+        place(next_, width() - sideRoom - nextWidth, bottomY, nextWidth, bottomHeight);
+        sideRoom += nextWidth + 24;
+    } else {
+        const int asked = sureness_->fontMetrics().horizontalAdvance(sureness_->text()) + 8;
+        const int sides = std::max(nextWidth, asked) + 40;
+        const int rowWidth = std::min(confidence_->sizeHint().width(), usable - 2 * sides);
+        const int rowX = (width() - rowWidth) / 2;
+        confidence_->setGeometry(rowX, y - kRing, rowWidth, confidenceHeight + 2 * kRing);
+        sureness_->setGeometry(margin, y, rowX - margin - 24, confidenceHeight);
+        place(next_, rowX + rowWidth + 24, y + (confidenceHeight - scaled(56)) / 2, nextWidth, scaled(56));
+    }
+    hint_->setGeometry(margin, y, usable, confidenceHeight);
     progress_->setGeometry(sideRoom, bottomY - 8, width() - 2 * sideRoom, bottomHeight + 16);
 }
 

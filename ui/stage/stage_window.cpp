@@ -248,7 +248,7 @@ QString StageWindow::progressText(const Prompt& prompt) const {
     const auto where = controller_.progress();
     const QString pilot = controller_.state().began.kind == SessionKind::Participant
                               ? QString()
-                              : tr("Pilot session.") + QLatin1Char(' ');
+                              : tr("Pilot.") + QLatin1Char(' ');
     QString text = where.practice ? tr("Practice pair %1 of %2.") : tr("Pair %1 of %2.");
     text = text.arg(where.number).arg(where.total);
     if (prompt.kind == PromptKind::Saved && !controller_.isBetween())

@@ -284,8 +284,14 @@ TEST_F(Stage, HasLargeTargetsLargeTextAndNamesForEveryControl) {
         EXPECT_GE(label->font().pixelSize(), 19) << label->objectName().toStdString();
 }
 
-TEST_F(Stage, OverlapsNothingAndMirrorsAboutItsMiddle) {
+class StageOfLevels : public Stage, public ::testing::WithParamInterface<int> {};
+
+TEST_P(StageOfLevels, OverlapsNothingAndMirrorsAboutItsMiddle) {
     study.protocol.cannotTell = true;
+    study.protocol.levels = GetParam();
+    const std::vector<std::string> words = {"Barely", "Slightly", "A little",  "Moderately",
+                                            "Fairly", "Very",     "Completely"};
+    study.protocol.texts.front().confidence = {words.begin(), words.begin() + GetParam()};
     begin();
     toTrial();
     playToEnd();
@@ -299,6 +305,13 @@ TEST_F(Stage, OverlapsNothingAndMirrorsAboutItsMiddle) {
         EXPECT_EQ(left.left(), size.width() - 1 - right.right());
         EXPECT_EQ(part(*stage, "stage.undo")->x(),
                   size.width() - part(*stage, "stage.stop")->geometry().right() - 1);
+        for (int level = 1; level <= GetParam(); ++level) {
+            const auto* word =
+                part<QAbstractButton>(*stage, ("stage.confidence" + std::to_string(level)).c_str());
+            for (const QString& piece : word->text().split(' '))
+                EXPECT_LE(QFontMetrics(word->font()).horizontalAdvance(piece), word->width() - 24)
+                    << size.width() << ' ' << word->text().toStdString();
+        }
         std::vector<std::pair<QString, QRect>> outlines;
         for (const auto* child : stage->findChildren<QWidget*>(QString(), Qt::FindDirectChildrenOnly))
             if (child->isVisible() && !qobject_cast<const QLabel*>(child)) {
@@ -319,3 +332,5 @@ TEST_F(Stage, OverlapsNothingAndMirrorsAboutItsMiddle) {
         }
     }
 }
+
+INSTANTIATE_TEST_SUITE_P(OneToSeven, StageOfLevels, ::testing::Range(1, 8));
