@@ -5,13 +5,22 @@
 #include "core/findings/session_findings.h"
 #include "core/journal/journal.h"
 #include "core/journal/session_state.h"
+#include "core/study/study.h"
 #include "ui/report/session_report.h"
 
 #include <QApplication>
 #include <cstdlib>
+#include <filesystem>
 
 namespace whichway {
 namespace {
+
+/// STUDY of STUDY/sessions/ID.
+std::string studyOf(const SessionFolder& session) {
+    // "." at the end stands for the folder itself, however the path was written.
+    const auto inside = std::filesystem::absolute(session.path) / ".";
+    return inside.lexically_normal().parent_path().parent_path().parent_path().string();
+}
 
 bool hasDisplay() {
     const auto isSet = [](const char* name) {
@@ -31,7 +40,11 @@ Result<void> writeReport(FileSystem& files, const SessionFolder& session, const 
     const auto findings = findSession(*state);
     if (!findings)
         return findings.error();
-    return writeSessionReport(files, *state, *findings, session.code, folder);
+    // The session holds all that is reported; the study beside it adds drawings of the motions.
+    const StudyReading study = readStudy(files, studyOf(session));
+    const bool isTheSame = study.ok() && study.study.protocol.hash == state->began.protocol.hash;
+    return writeSessionReport(files, *state, *findings,
+                              {.code = session.code, .study = isTheSame ? &study.study : nullptr}, folder);
 }
 
 } // namespace

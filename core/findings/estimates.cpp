@@ -7,13 +7,15 @@
 #include <algorithm>
 #include <cmath>
 #include <fmt/core.h>
+#include <limits>
 #include <numbers>
 #include <stdexcept>
 
 namespace whichway {
 namespace {
 
-constexpr double kSignCertainty = 0.99;
+constexpr double kNumeraireCertain = 0.99;
+constexpr double kSignDetermined = 0.95; // only marks; nothing is hidden
 
 std::vector<double> column(const Matrix& matrix, std::size_t index) {
     std::vector<double> values(matrix.rows);
@@ -22,37 +24,89 @@ std::vector<double> column(const Matrix& matrix, std::size_t index) {
     return values;
 }
 
-double shareAboveZero(const std::vector<double>& values) {
-    return static_cast<double>(std::count_if(values.begin(), values.end(), [](double v) { return v > 0; })) /
-           static_cast<double>(values.size());
+/// Percentile of sorted values.
+double percentile(const std::vector<double>& sorted, double p) {
+    const double position = p * static_cast<double>(sorted.size() - 1);
+    const auto below = static_cast<std::size_t>(position);
+    const double part = position - static_cast<double>(below);
+    if (part == 0 || below + 1 == sorted.size() || sorted[below] == sorted[below + 1])
+        return sorted[below];
+    return sorted[below] + part * (sorted[below + 1] - sorted[below]);
+}
+
+bool isLog(const FeatureDefinition& feature) {
+    return feature.scale == FeatureScale::Log;
 }
 
 /// The change of a feature that a trade-off speaks of, on the scale that was standardised.
 double stepOf(const FeatureDefinition& feature) {
-    return feature.scale == FeatureScale::Log ? std::numbers::ln2 : feature.speakPer;
+    return isLog(feature) ? std::numbers::ln2 : feature.speakPer;
 }
 
-std::string sentenceFor(const FeatureDefinition& feature, const FeatureDefinition& numeraire,
-                        const TradeOff& tradeOff) {
-    const std::string change =
-        feature.scale == FeatureScale::Log
-            ? fmt::format("Twice as much {}", inSentence(feature.label))
-            : fmt::format("{} more {}", withUnit(feature.speakPer, feature.unit), inSentence(feature.label));
-    if (!tradeOff.determined)
-        return fmt::format("{}: not determined, because the sign of {} is only {:.0f} % certain.", change,
-                           inSentence(numeraire.label), 100 * tradeOff.signProbability);
-    const std::string unit = numeraire.scale == FeatureScale::Log ? "doublings" : numeraire.unit;
-    return fmt::format("{} is balanced by {} {} {} (90 % interval {}).", change,
-                       withUnit(std::abs(tradeOff.change.median), unit),
-                       tradeOff.change.median < 0 ? "less" : "more", inSentence(numeraire.label),
-                       rangeWithUnit(tradeOff.change.low, tradeOff.change.high, unit));
+/// "0.1 m more closest distance", "twice the roughness".
+std::string stepText(const FeatureDefinition& feature, bool more) {
+    if (isLog(feature))
+        return fmt::format("{} the {}", more ? "twice" : "half", inSentence(feature.label));
+    return fmt::format("{} {} {}", spokenQuantity(spokenNumber(feature.speakPer), feature.unit),
+                       more ? "more" : "less", inSentence(feature.label));
+}
+
+/// A change of the numeraire; a numeraire of no weight at all pays for nothing.
+double changeOf(double featureSlope, double numeraireSlope) {
+    if (numeraireSlope == 0)
+        return featureSlope == 0 ? 0 : std::copysign(std::numeric_limits<double>::infinity(), -featureSlope);
+    return -featureSlope / numeraireSlope;
+}
+
+void putIntoWords(TradeOff& found, const FeatureDefinition& feature, const FeatureDefinition& numeraire,
+                  bool numeraireLiked) {
+    // Giving up means more of a numeraire that is disliked, less of one that is liked.
+    const double payment = numeraireLiked ? -1 : 1;
+    const bool more = found.change.median * payment >= 0;
+    const double turn = more ? payment : -payment;
+    double low = turn * found.change.low, high = turn * found.change.high;
+    if (turn < 0)
+        std::swap(low, high);
+    const int decimals = decimalsFor(high - low);
+    const std::string unit = isLog(numeraire) ? "doublings" : numeraire.unit;
+    found.give = spokenQuantity(spokenNumber(turn * found.change.median, decimals), unit);
+    found.giveWhat = fmt::format("{} {}", numeraireLiked ? "less" : "more", inSentence(numeraire.label));
+    found.forWhat = stepText(feature, more);
+    found.range = spokenRange(low, high, decimals, unit);
+    found.sentence = fmt::format("For {}, this person accepts {} {} (90\u00a0% interval {}).", found.forWhat,
+                                 found.give, found.giveWhat, found.range);
+    if (found.featureSignProbability < kSignDetermined)
+        found.sentence += fmt::format(" That {} of it is liked is certain only to {:.2f}.",
+                                      more ? "more" : "less", found.featureSignProbability);
+}
+
+std::string undeterminedSentence(const TradeOff& found, const FeatureDefinition& numeraire) {
+    return fmt::format(
+        "What {} is worth is not determined: whether more or less {} is liked is certain only to "
+        "{:.2f}, and {:.2f} is asked for.",
+        found.forWhat, inSentence(numeraire.label), std::floor(100 * found.signProbability) / 100,
+        kNumeraireCertain);
 }
 
 } // namespace
 
 Interval intervalOf(std::vector<double> values) {
+    if (values.empty())
+        throw std::invalid_argument("an interval needs values");
+    if (std::any_of(values.begin(), values.end(), [](double value) { return std::isnan(value); }))
+        throw std::invalid_argument("a value is not a number");
+    std::sort(values.begin(), values.end());
     return {
-        .median = quantileOf(values, 0.5), .low = quantileOf(values, 0.05), .high = quantileOf(values, 0.95)};
+        .median = percentile(values, 0.5), .low = percentile(values, 0.05), .high = percentile(values, 0.95)};
+}
+
+double probabilityPositive(const std::vector<double>& values) {
+    if (values.empty())
+        throw std::invalid_argument("a probability needs values");
+    double positive = 0;
+    for (const double value : values)
+        positive += value > 0 ? 1 : (value == 0 ? 0.5 : 0);
+    return positive / static_cast<double>(values.size());
 }
 
 WeightFindings findWeights(const Protocol& protocol, const Draws& draws) {
@@ -64,7 +118,7 @@ WeightFindings findWeights(const Protocol& protocol, const Draws& draws) {
     for (std::size_t i = 0; i < n; ++i) {
         lengths[i] = std::sqrt(dot(draws.weights.row(i), draws.weights.row(i)));
         for (std::size_t j = 0; j < d; ++j) {
-            directions(i, j) = draws.weights(i, j) / lengths[i];
+            directions(i, j) = lengths[i] > 0 ? draws.weights(i, j) / lengths[i] : 0;
             findings.meanDirection[j] += directions(i, j);
             mean[j] += draws.weights(i, j) / static_cast<double>(n);
         }
@@ -91,7 +145,7 @@ WeightFindings findWeights(const Protocol& protocol, const Draws& draws) {
                                      .direction = intervalOf(column(directions, j)),
                                      .standardised = intervalOf(weights),
                                      .perUnit = intervalOf(perUnit),
-                                     .positive = shareAboveZero(weights)});
+                                     .positive = probabilityPositive(weights)});
     }
     return findings;
 }
@@ -103,23 +157,34 @@ std::vector<TradeOff> findTradeOffs(const Protocol& protocol, const Draws& draws
     if (numeraire == protocol.features.end())
         throw std::invalid_argument("findTradeOffs: the protocol has no such numeraire");
     const auto n = static_cast<std::size_t>(numeraire - protocol.features.begin());
-    const double above = shareAboveZero(column(draws.weights, n));
-    const double perNumeraire = numeraire->scale == FeatureScale::Log ? std::numbers::ln2 : 1.0;
+    if (draws.count() == 0 || draws.weights.columns != protocol.features.size() ||
+        protocol.table.standardisation.size() != protocol.features.size())
+        throw std::invalid_argument("findTradeOffs: the draws do not fit the protocol");
+    const double liked = probabilityPositive(column(draws.weights, n));
+    const double numeraireStep = isLog(*numeraire) ? std::numbers::ln2 : 1.0;
+    const auto slope = [&](std::size_t draw, std::size_t feature, double step) {
+        return draws.weights(draw, feature) / protocol.table.standardisation[feature].deviation * step;
+    };
 
     std::vector<TradeOff> tradeOffs;
     for (std::size_t j = 0; j < protocol.features.size(); ++j) {
         if (j == n)
             continue;
-        TradeOff tradeOff{.feature = protocol.features[j].name,
-                          .signProbability = std::max(above, 1 - above)};
-        tradeOff.determined = tradeOff.signProbability >= kSignCertainty;
-        const double scale = stepOf(protocol.features[j]) * protocol.table.standardisation[n].deviation /
-                             protocol.table.standardisation[j].deviation / perNumeraire;
+        const FeatureDefinition& feature = protocol.features[j];
+        const double positive = probabilityPositive(column(draws.weights, j));
+        TradeOff tradeOff{.feature = feature.name,
+                          .signProbability = std::max(liked, 1 - liked),
+                          .featureSignProbability = std::max(positive, 1 - positive),
+                          .forWhat = stepText(feature, true)};
+        tradeOff.determined = tradeOff.signProbability >= kNumeraireCertain;
         std::vector<double> changes(draws.count());
         for (std::size_t i = 0; i < changes.size(); ++i)
-            changes[i] = -draws.weights(i, j) / draws.weights(i, n) * scale;
+            changes[i] = changeOf(slope(i, j, stepOf(feature)), slope(i, n, numeraireStep));
         tradeOff.change = intervalOf(std::move(changes));
-        tradeOff.sentence = sentenceFor(protocol.features[j], *numeraire, tradeOff);
+        if (tradeOff.determined)
+            putIntoWords(tradeOff, feature, *numeraire, liked > 0.5);
+        else
+            tradeOff.sentence = undeterminedSentence(tradeOff, *numeraire);
         tradeOffs.push_back(std::move(tradeOff));
     }
     return tradeOffs;
@@ -150,7 +215,8 @@ BestMotions findBestMotions(const Protocol& protocol, const Draws& draws) {
     BestMotions found;
     found.best = {.motion = protocol.table.motions[b], .probability = best[b] / count};
     found.worst = {.motion = protocol.table.motions[w], .probability = worst[w] / count};
-    found.expectedRegret = (sumOfMax - mean[b]) / (sumOfMax - sumOfMean);
+    if (sumOfMax > sumOfMean) // else all motions are alike
+        found.expectedRegret = std::max(0.0, (sumOfMax - mean[b]) / (sumOfMax - sumOfMean));
     return found;
 }
 

@@ -14,7 +14,13 @@ struct Interval {
     double median = 0, low = 0, high = 0;
 };
 
+/// Percentiles by linear interpolation (Hyndman and Fan 1996, type 7); infinite values may stand at the ends.
+/// @throws std::invalid_argument without values or where one is not a number.
 Interval intervalOf(std::vector<double> values);
+
+/// The share of values above 0, those that are 0 counting half: the probability that the number is positive.
+/// @throws std::invalid_argument without values.
+double probabilityPositive(const std::vector<double>& values);
 
 /// What one feature weighs.
 struct WeightFinding {
@@ -37,14 +43,23 @@ struct WeightFindings {
 
 WeightFindings findWeights(const Protocol& protocol, const Draws& draws);
 
-/// How much of the numeraire balances a change of another feature at equal utility:
-///     -(w_j / sd_j) / (w_n / sd_n) x step,  step = speakPer, or ln 2 (a doubling) for a logarithmic feature.
+/// How much of the numeraire n makes up for one step of another feature j: the change of the numeraire that
+/// leaves the utility as it was when the feature grows by a step (the marginal rate of substitution),
+///     -(w_j / sd_j) step / (w_n / sd_n),   step = speakPer, or ln 2 (a doubling) for a logarithmic feature.
 struct TradeOff {
     std::string feature = {};
     bool determined = false;    ///< the sign of the numeraire's weight has a probability of at least 0.99
     double signProbability = 0; ///< of the numeraire's more likely sign
-    Interval change = {};       ///< of the numeraire, in its unit (in doublings where it is logarithmic)
-    std::string sentence = {};  ///< the same in plain English, with units and interval
+    double featureSignProbability = 0; ///< of the feature's own more likely sign; hides nothing
+    Interval change = {}; ///< of the numeraire, in its unit (in doublings where it is logarithmic)
+
+    // The same in words, turned so that what the person gives up is positive at the median. Where it is not
+    // determined, only `forWhat` and `sentence` are there.
+    std::string give = {};     ///< "1.3 s"
+    std::string giveWhat = {}; ///< "more travel time"
+    std::string forWhat = {};  ///< "0.1 m more closest distance"
+    std::string range = {};    ///< "0.7 to 2.2 s"; below 0: the person would have to be given something
+    std::string sentence = {}; ///< the whole, in plain English with units and interval
 };
 
 /// One a feature, the numeraire left out, in the order of the features.

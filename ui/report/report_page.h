@@ -1,30 +1,43 @@
 // SPDX-License-Identifier: GPL-3.0-or-later
 #pragma once
 
-#include <QString>
+#include "ui/charts/chart_style.h"
+#include "ui/report/markup.h"
+#include "ui/report/session_report.h"
+
+#include <QCoreApplication>
 
 namespace whichway {
 
-/// The report's page under construction: every text that comes in is escaped here, so that none can slip
-/// through.
+/// Puts the page of one session together, section by section. The arguments must outlive it.
 class ReportPage {
+    Q_DECLARE_TR_FUNCTIONS(ReportPage)
 public:
-    void heading(const QString& text);
-    void paragraph(const QString& text, const QString& style = {});
-    void raw(const QString& markup) { body_ += markup; }
-    void openColumns() { body_ += QStringLiteral("<div class=\"columns\">"); }
-    void nextColumn() { body_ += QStringLiteral("</div><div>"); }
-    void openColumn() { body_ += QStringLiteral("<div>"); }
-    void closeColumns() { body_ += QStringLiteral("</div></div>"); }
-    void openTable(const QStringList& heads);
-    void row(const QStringList& cells);
-    void closeTable() { body_ += QStringLiteral("</tbody></table>"); }
+    ReportPage(const SessionState& state, const SessionFindings& findings, const ReportExtras& extras);
 
-    /// The whole page, with its style.
-    QByteArray html(const QString& title, const QString& language) const;
+    QString page();
 
 private:
-    QString body_;
+    void head();
+    void marks();
+    void weights();
+    void tradeOffs();
+    void session();
+    void consistency();
+    void prediction();
+    void course();
+    void motions();
+    void motion(const QString& heading, const MotionFinding& finding, const QString& role);
+    void model();
+    void diagnostics();
+    void log();
+    void cautionsAndFoot();
+
+    const SessionState& state_;
+    const SessionFindings& findings_;
+    const ReportExtras& extras_;
+    ChartStyle style_ = paperStyle();
+    Markup out_;
 };
 
 } // namespace whichway

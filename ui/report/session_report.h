@@ -5,20 +5,28 @@
 #include "core/findings/session_findings.h"
 #include "core/journal/session_state.h"
 #include "core/result.h"
+#include "core/study/study.h"
 
-#include <QByteArray>
+#include <QString>
 #include <string>
 
 namespace whichway {
 
-/// One session's report as one self-contained HTML page (well-formed XML): no script, no remote address,
-/// every text of the study escaped. Needs a QApplication, on any platform.
-/// @param code the person's code, or empty for a report that leaves the lab
-QByteArray sessionReport(const SessionState& state, const SessionFindings& findings, const std::string& code);
+/// What a report may hold beyond the session itself.
+struct ReportExtras {
+    std::string code = {};        ///< printed, with the date, only where given: for the lab's own copy
+    const Study* study = nullptr; ///< with it the best and worst motions are drawn; must outlive the call
+};
+
+/// The report as one page of HTML that is well-formed XML too, without script or any reference to another
+/// file. Needs a QGuiApplication; a display is not needed.
+QString sessionReportPage(const SessionState& state, const SessionFindings& findings,
+                          const ReportExtras& extras);
 
 /// Writes report.html, trials.csv, codebook.csv and weights.json into `folder`, which is made where it is
-/// missing.
+/// missing. The last three never hold code, date or free text. @return the first file that could not be
+/// written, as an error of the file system.
 Result<void> writeSessionReport(FileSystem& files, const SessionState& state, const SessionFindings& findings,
-                                const std::string& code, const std::string& folder);
+                                const ReportExtras& extras, const std::string& folder);
 
 } // namespace whichway
