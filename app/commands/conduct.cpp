@@ -38,42 +38,34 @@ SessionKind kindOf(const ConductOptions& options) {
     return options.pilot ? SessionKind::Pilot : SessionKind::Participant;
 }
 
-/// The session to conduct: the participant's unfinished one with --resume, else a new one. A participant with
-/// an unfinished session does not silently get a second one. A simulated participant may.
-Result<std::unique_ptr<Conductor>> beginOrResume(const Study& study, const ConductOptions& options,
-                                                 const Surroundings& surroundings) {
+/// The session to take up: the participant's newest unfinished one with --resume, else none. A participant
+/// with an unfinished session does not silently get a second one. A simulated participant may.
+Result<std::optional<SessionFolder>> sessionToResume(const FileSystem& files, const Study& study,
+                                                     const ConductOptions& options) {
     const bool mayHaveUnfinished = options.anew || options.answers == AnswersFrom::Simulated;
-    if (options.resume || !mayHaveUnfinished) {
-        auto unfinished = unfinishedSessions(surroundings.files, study.folder, options.participant);
-        if (!unfinished)
-            return unfinished.error();
-        if (options.resume) {
-            if (unfinished->empty())
-                return Error{.code = "session.nothing-unfinished",
-                             .place = {.file = study.folder},
-                             .message = "This participant has no unfinished session.",
-                             .remedy = "Begin one without --resume.",
-                             .values = {}};
-            return Conductor::resume(study, unfinished->back().folder, surroundings);
-        }
-        if (!unfinished->empty()) {
-            const UnfinishedSession& last = unfinished->back();
-            return Error{.code = "session.unfinished",
-                         .place = {.file = last.folder.path},
-                         .message = fmt::format("This participant's session of {} is unfinished: {} of {} "
-                                                "trials are answered, and its last event is of {}.",
-                                                last.began, last.answered, last.total, last.last),
-                         .remedy = "Take it up with --resume, or begin another with --anew.",
-                         .values = {}};
-        }
-    }
-    return Conductor::begin(study,
-                            {.kind = kindOf(options),
-                             .code = options.participant,
-                             .language = options.language,
-                             .seed = options.seed ? *options.seed : seedFromSystem(),
-                             .id = ""},
-                            surroundings);
+    if (!options.resume && mayHaveUnfinished)
+        return std::optional<SessionFolder>();
+    auto unfinished = unfinishedSessions(files, study.folder, options.participant);
+    if (!unfinished)
+        return unfinished.error();
+    if (options.resume && unfinished->empty())
+        return Error{.code = "session.nothing-unfinished",
+                     .place = {.file = study.folder},
+                     .message = "This participant has no unfinished session.",
+                     .remedy = "Begin one without --resume.",
+                     .values = {}};
+    if (options.resume)
+        return std::optional(unfinished->back().folder);
+    if (unfinished->empty())
+        return std::optional<SessionFolder>();
+    const UnfinishedSession& last = unfinished->back();
+    return Error{.code = "session.unfinished",
+                 .place = {.file = last.folder.path},
+                 .message = fmt::format("This participant's session of {} is unfinished: {} of {} trials are "
+                                        "answered, and its last event is of {}.",
+                                        last.began, last.answered, last.total, last.last),
+                 .remedy = "Take it up with --resume, or begin another with --anew.",
+                 .values = {}};
 }
 
 int simulate(Conductor& conductor, const ConductOptions& options) {
@@ -120,8 +112,18 @@ int conduct(const ConductOptions& given, int argc, char** argv) {
     const auto study = openStudy(files, options.study);
     if (!study)
         return kInputAtFault;
+    const auto resumed = sessionToResume(files, *study, options);
+    if (!resumed)
+        return complain(resumed.error());
+    if (!options.seed)
+        options.seed = seedFromSystem();
+    const SessionSetup setup{.kind = kindOf(options),
+                             .code = options.participant,
+                             .language = options.language,
+                             .seed = *options.seed,
+                             .id = ""};
     if (options.answers == AnswersFrom::Screen)
-        return conductOnScreen(*study, options, argc, argv);
+        return conductOnScreen(*study, setup, *resumed, argc, argv);
 
     const RealClock clock;
     const auto problem = planningProblemOf(study->protocol);
@@ -132,7 +134,8 @@ int conduct(const ConductOptions& given, int argc, char** argv) {
         planner = std::make_unique<PlanningWorker>(problem);
     const Surroundings surroundings{
         .files = files, .clock = clock, .planner = *planner, .program = WHICHWAY_VERSION};
-    auto conductor = beginOrResume(*study, options, surroundings);
+    auto conductor = *resumed ? Conductor::resume(*study, **resumed, surroundings)
+                              : Conductor::begin(*study, setup, surroundings);
     if (!conductor)
         return complain(conductor.error());
     if (options.answers == AnswersFrom::Simulated)

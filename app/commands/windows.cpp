@@ -4,11 +4,9 @@
 #include "app/commands/report.h"
 #include "app/experiment.h"
 #include "app/terminal.h"
-#include "core/session/unfinished_session.h"
 #include "ui/look/style.h"
 
 #include <QApplication>
-#include <QRandomGenerator>
 #include <functional>
 
 namespace whichway {
@@ -39,24 +37,15 @@ int openWindow(const std::string& study, int argc, char** argv) {
     });
 }
 
-int conductOnScreen(const Study& study, const ConductOptions& options, int argc, char** argv) {
+int conductOnScreen(const Study& study, const SessionSetup& setup,
+                    const std::optional<SessionFolder>& resumed, int argc, char** argv) {
     return runWindow(argc, argv, [&](Experiment& experiment) {
         if (!experiment.open(QString::fromStdString(study.folder)))
             return false;
-        if (options.resume) {
-            const RealFileSystem files;
-            const auto unfinished = unfinishedSessions(files, study.folder, options.participant);
-            if (!unfinished || unfinished->empty()) {
-                complain("This participant has no unfinished session.");
-                return false;
-            }
-            experiment.goOn(unfinished->back().folder);
-            return true;
-        }
-        experiment.begin({.kind = options.pilot ? SessionKind::Pilot : SessionKind::Participant,
-                          .code = options.participant,
-                          .language = options.language,
-                          .seed = options.seed ? *options.seed : QRandomGenerator::system()->generate64()});
+        if (resumed)
+            experiment.goOn(*resumed);
+        else
+            experiment.begin(setup);
         return true;
     });
 }
