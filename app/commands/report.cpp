@@ -22,6 +22,14 @@ std::string studyOf(const SessionFolder& session) {
     return inside.lexically_normal().parent_path().parent_path().parent_path().string();
 }
 
+bool hasDisplay() {
+    const auto isSet = [](const char* name) {
+        const char* value = std::getenv(name);
+        return value && *value != '\0';
+    };
+    return isSet("DISPLAY") || isSet("WAYLAND_DISPLAY");
+}
+
 Result<void> writeReport(FileSystem& files, const SessionFolder& session, const std::string& folder) {
     const auto reading = readJournal(files, session.journal());
     if (!reading)
@@ -54,7 +62,7 @@ int report(const std::string& sessionPath, const std::string& folder, int argc, 
     if (!session)
         return complain(session.error());
     // Charts are drawn by the window system's library, which can do without a display.
-    if (!std::getenv("DISPLAY") && !std::getenv("WAYLAND_DISPLAY"))
+    if (!hasDisplay())
         ::setenv("QT_QPA_PLATFORM", "offscreen", 0);
     const QApplication application(argc, argv);
     if (auto written = writeReport(files, *session, folder); !written)

@@ -29,6 +29,7 @@ struct CsvLimits {
 };
 
 /// Reads commas, double quotes, LF or CR LF; UTF-8 without or with a byte order mark (which is skipped).
+/// Empty lines are skipped; blanks belong to their cell.
 /// @return "csv.encoding" (not UTF-8, or a NUL), "csv.semicolons" (separated by ';'), "csv.cells" (a row with
 /// too many or too few cells), "csv.quote", "csv.empty" (no header), "csv.duplicate-column", "csv.too-large".
 Result<CsvTable> parseCsv(std::string_view content, const std::string& file, const CsvLimits& limits = {});
@@ -46,7 +47,7 @@ public:
     /// A text cell. One that begins with = + - @, tab or CR is led by an apostrophe, so that no spreadsheet
     /// runs it.
     CsvBuilder& text(std::string_view value);
-    CsvBuilder& number(double value); ///< NaN becomes "n/a"
+    CsvBuilder& number(double value); ///< NaN becomes "n/a", infinities "inf" and "-inf"
     CsvBuilder& integer(long long value);
     /// @throws std::logic_error if the row has not as many cells as the header.
     CsvBuilder& endRow();

@@ -82,12 +82,17 @@ private:
     int number_;
 };
 
+/// Calls again what a signal interrupted.
+template <typename Call>
+auto retried(Call call) {
+    auto result = call();
+    while (result < 0 && errno == EINTR)
+        result = call();
+    return result;
+}
+
 Descriptor openFile(const std::string& path, int flags, mode_t mode = 0) {
-    int number = -1;
-    do
-        number = ::open(path.c_str(), flags | O_CLOEXEC | O_NOFOLLOW, mode);
-    while (number < 0 && errno == EINTR);
-    return Descriptor(number);
+    return Descriptor(retried([&] { return ::open(path.c_str(), flags | O_CLOEXEC | O_NOFOLLOW, mode); }));
 }
 
 std::string parentOf(const std::string& path) {
@@ -99,10 +104,18 @@ std::string parentOf(const std::string& path) {
 
 Result<void> syncDirectory(const std::string& path) {
     // The folder itself may be reached through links (a home folder often is), so only files refuse them.
-    Descriptor directory(::open(path.c_str(), O_RDONLY | O_DIRECTORY | O_CLOEXEC));
-    if (!directory.open() || ::fsync(directory.number()) != 0)
+    Descriptor directory(retried([&] { return ::open(path.c_str(), O_RDONLY | O_DIRECTORY | O_CLOEXEC); }));
+    if (!directory.open())
+        return failure("Syncing the folder", path, errno);
+    // Some network file systems cannot sync a folder and say so with EINVAL; they keep its entries elsewhere.
+    if (retried([&] { return ::fsync(directory.number()); }) != 0 && errno != EINVAL)
         return failure("Syncing the folder", path, errno);
     return {};
+}
+
+bool isDirectory(const std::string& path) {
+    struct stat status {};
+    return ::stat(path.c_str(), &status) == 0 && S_ISDIR(status.st_mode);
 }
 
 Result<void> writeAll(int number, std::string_view bytes, const std::string& path) {
@@ -123,7 +136,7 @@ public:
     RealAppendFile(Descriptor file, std::string path) : file_(std::move(file)), path_(std::move(path)) {}
     Result<void> append(std::string_view bytes) override { return writeAll(file_.number(), bytes, path_); }
     Result<void> sync() override {
-        if (::fdatasync(file_.number()) != 0)
+        if (retried([&] { return ::fdatasync(file_.number()); }) != 0)
             return failure("Syncing", path_, errno);
         return {};
     }
@@ -163,12 +176,17 @@ Result<std::vector<DirectoryEntry>> RealFileSystem::list(const std::string& dire
     if (!stream)
         return failure("Listing", directory, errno);
     std::vector<DirectoryEntry> entries;
+    errno = 0; // readdir ends with null both ways
     while (const dirent* entry = ::readdir(stream)) {
         const std::string name = entry->d_name;
         if (name != "." && name != "..")
             entries.push_back({.name = name, .kind = kind(directory + "/" + name)});
+        errno = 0;
     }
+    const int number = errno;
     ::closedir(stream);
+    if (number != 0)
+        return failure("Listing", directory, number);
     std::sort(entries.begin(), entries.end(),
               [](const DirectoryEntry& a, const DirectoryEntry& b) { return a.name < b.name; });
     return entries;
@@ -208,25 +226,23 @@ Result<std::string> RealFileSystem::read(const std::string& path, std::uint64_t 
 }
 
 Result<void> RealFileSystem::createDirectory(const std::string& path) {
-    if (path.empty() || kind(path) == EntryKind::Directory)
+    if (path.empty() || isDirectory(path))
         return {};
     const std::string parent = parentOf(path);
-    if (kind(parent) == EntryKind::Missing)
-        if (auto made = createDirectory(parent); !made)
-            return made;
-    if (::mkdir(path.c_str(), 0700) != 0)
+    if (auto made = createDirectory(parent); !made)
+        return made;
+    if (::mkdir(path.c_str(), 0700) != 0 && !(errno == EEXIST && isDirectory(path)))
         return failure("Making the folder", path, errno);
     return syncDirectory(parent);
 }
 
 Result<std::unique_ptr<AppendFile>> RealFileSystem::openAppend(const std::string& path) {
-    const bool fresh = kind(path) == EntryKind::Missing;
     Descriptor file = openFile(path, O_WRONLY | O_APPEND | O_CREAT, 0600);
     if (!file.open())
         return failure("Opening", path, errno);
-    if (fresh)
-        if (auto synced = syncDirectory(parentOf(path)); !synced)
-            return synced.error();
+    // Also when the file was there: the run that made it may have been killed before it synced the folder.
+    if (auto synced = syncDirectory(parentOf(path)); !synced)
+        return synced.error();
     return std::unique_ptr<AppendFile>(std::make_unique<RealAppendFile>(std::move(file), path));
 }
 
@@ -240,27 +256,34 @@ Result<void> RealFileSystem::replace(const std::string& path, std::string_view c
             ::unlink(temporary.c_str());
             return written;
         }
-        if (::fsync(file.number()) != 0) {
+        if (retried([&] { return ::fsync(file.number()); }) != 0) {
             const int number = errno;
             ::unlink(temporary.c_str());
             return failure("Syncing", temporary, number);
         }
     }
-    if (::rename(temporary.c_str(), path.c_str()) != 0)
-        return failure("Renaming", path, errno);
+    if (::rename(temporary.c_str(), path.c_str()) != 0) {
+        const int number = errno;
+        ::unlink(temporary.c_str());
+        return failure("Renaming", path, number);
+    }
     return syncDirectory(parentOf(path));
 }
 
 Result<void> RealFileSystem::truncate(const std::string& path, std::uint64_t length) {
     Descriptor file = openFile(path, O_WRONLY);
-    if (!file.open() || ::ftruncate(file.number(), static_cast<off_t>(length)) != 0 ||
-        ::fdatasync(file.number()) != 0)
+    if (!file.open() ||
+        retried([&] { return ::ftruncate(file.number(), static_cast<off_t>(length)); }) != 0 ||
+        retried([&] { return ::fdatasync(file.number()); }) != 0)
         return failure("Cutting the file", path, errno);
     return {};
 }
 
 Result<void> RealFileSystem::rename(const std::string& from, const std::string& to) {
-    if (::renameat2(AT_FDCWD, from.c_str(), AT_FDCWD, to.c_str(), RENAME_NOREPLACE) != 0)
+    int done = ::renameat2(AT_FDCWD, from.c_str(), AT_FDCWD, to.c_str(), RENAME_NOREPLACE);
+    if (done != 0 && errno == EINVAL && kind(to) == EntryKind::Missing) // NFS does not know the flag
+        done = ::rename(from.c_str(), to.c_str());
+    if (done != 0)
         return failure("Renaming", to, errno);
     if (auto synced = syncDirectory(parentOf(to)); !synced)
         return synced;

@@ -35,7 +35,9 @@ struct DirectoryEntry {
 };
 
 /// The file system as the core sees it. Paths are UTF-8 with '/'. Every method reports the world's faults as
-/// errors "file.…" whose place names the path. Nothing follows a symbolic link in the last component.
+/// errors whose place names the path: "file.missing", "file.denied", "file.disk-full", "file.exists",
+/// "file.link", "file.failed". A file that is a symbolic link is never opened ("file.link"); folders may be
+/// reached through links.
 class FileSystem {
 public:
     virtual ~FileSystem() = default;
@@ -43,12 +45,13 @@ public:
     virtual EntryKind kind(const std::string& path) const = 0;
     /// Entries without "." and "..", sorted by name in byte order.
     virtual Result<std::vector<DirectoryEntry>> list(const std::string& directory) const = 0;
-    /// Whole content. @return "file.too-large" if it is longer than `maxBytes`.
+    /// Whole content. @return "file.too-large" if it is longer than `maxBytes`, "file.not-a-file" for a
+    /// folder, pipe or device.
     virtual Result<std::string> read(const std::string& path, std::uint64_t maxBytes) const = 0;
 
-    /// Creates the directory (mode 0700) and its missing parents, and syncs each parent.
+    /// Creates the directory (mode 0700) and its missing parents, and syncs each one's parent. It may exist.
     virtual Result<void> createDirectory(const std::string& path) = 0;
-    /// Opens for appending (mode 0600), creating the file where it is missing and then syncing its directory.
+    /// Opens for appending (mode 0600), creating the file where it is missing, and syncs its directory.
     virtual Result<std::unique_ptr<AppendFile>> openAppend(const std::string& path) = 0;
     /// Writes a temporary file beside `path`, syncs it, renames it over `path`, syncs the directory (mode
     /// 0600).

@@ -4,9 +4,10 @@
 #include "core/files/sha256.h"
 #include "core/journal/json.h"
 
+#include <algorithm>
 #include <cmath>
+#include <iterator>
 #include <limits>
-#include <optional>
 
 namespace whichway {
 namespace {
@@ -25,11 +26,8 @@ constexpr EnumWord<SessionEnd> kSessionEnds[] = {{SessionEnd::Finished, "finishe
 /// A diagnostic may be undefined; JSON has no such number, so it is null there.
 Json numbersToJson(const std::vector<double>& values) {
     Json json = Json::array();
-    for (const double value : values) {
-        if (std::isinf(value))
-            throw std::invalid_argument("a number of an event is infinite");
+    for (const double value : values)
         json.push_back(std::isnan(value) ? Json(nullptr) : Json(value));
-    }
     return json;
 }
 
@@ -167,6 +165,36 @@ std::string coveredBy(std::string_view line) {
     return std::string(line.substr(0, line.size() - kTailLength)) + "}";
 }
 
+bool isFinite(const Json& json) {
+    if (json.is_number_float())
+        return std::isfinite(json.get<double>());
+    return !json.is_structured() || std::all_of(json.begin(), json.end(), isFinite);
+}
+
+/// Whether two values say the same, whichever way their numbers are written. The library reads 1.7, true or
+/// 2^40 into an int without a word; comparing what was read with what stands there finds that, and fields
+/// that nothing reads.
+bool sameValue(const Json& a, const Json& b) {
+    if (a.is_number_integer() && b.is_number_integer()) {
+        const auto negative = [](const Json& n) {
+            return !n.is_number_unsigned() && n.get<std::int64_t>() < 0;
+        };
+        return negative(a) == negative(b) && a.get<std::uint64_t>() == b.get<std::uint64_t>();
+    }
+    if (a.is_number() && b.is_number())
+        return a.get<double>() == b.get<double>();
+    if (a.type() != b.type() || a.size() != b.size())
+        return false;
+    if (a.is_array())
+        return std::equal(a.begin(), a.end(), b.begin(), sameValue);
+    if (!a.is_object())
+        return a == b;
+    for (const auto& [key, value] : a.items())
+        if (const auto other = b.find(key); other == b.end() || !sameValue(value, *other))
+            return false;
+    return true;
+}
+
 Error corrupt(std::uint64_t number, const std::string& why) {
     return {.code = "journal.corrupt",
             .place = {.file = {}, .line = static_cast<int>(number)},
@@ -175,17 +203,34 @@ Error corrupt(std::uint64_t number, const std::string& why) {
             .values = {std::to_string(number), why}};
 }
 
-} // namespace
+Error newer(std::uint64_t number, const std::string& what) {
+    return {.code = "journal.newer",
+            .place = {.file = {}, .line = static_cast<int>(number)},
+            .message = "Event " + std::to_string(number) + " of the journal " + what + ".",
+            .remedy = "Open the session with the version of the program that wrote it, or a newer one.",
+            .values = {std::to_string(number), what}};
+}
 
-EncodedRecord encodeRecord(const Record& record, std::string_view previousHash) {
+/// All of the line but its two hashes.
+Json toJson(const Record& record) {
     Json json;
+    json["format"] = kJournalFormat;
     json["number"] = record.number;
     json["type"] = kTypes[record.event.index()];
     json["time"] = record.time;
     json["run"] = record.run;
     json["monotonic_ns"] = record.monotonic;
     json["payload"] = std::visit([](const auto& event) { return Json(event); }, record.event);
+    return json;
+}
+
+} // namespace
+
+EncodedRecord encodeRecord(const Record& record, std::string_view previousHash) {
+    Json json = toJson(record);
     json["previous"] = std::string(previousHash);
+    if (!isFinite(json))
+        throw std::invalid_argument("encodeRecord: a number of the event is not finite");
     // Texts were checked where they came in; what is not UTF-8 all the same must not keep an answer from
     // being saved.
     std::string line = json.dump(-1, ' ', false, Json::error_handler_t::replace);
@@ -213,7 +258,7 @@ Result<DecodedRecord> decodeRecord(std::string_view line, std::uint64_t expected
     const std::string covered = coveredBy(line);
     if (sha256(covered) != hash)
         return corrupt(expectedNumber, "its text does not fit its hash");
-    const Json json = Json::parse(covered, nullptr, false);
+    Json json = Json::parse(covered, nullptr, false);
     if (json.is_discarded() || !json.is_object())
         return corrupt(expectedNumber, "it is no JSON object");
     // The library reports a missing field or a wrong type by throwing; this is the one place that turns it
@@ -221,7 +266,10 @@ Result<DecodedRecord> decodeRecord(std::string_view line, std::uint64_t expected
     try {
         if (json.at("previous").get<std::string>() != previousHash)
             return corrupt(expectedNumber, "it does not follow the event before it");
+        json.erase("previous");
         DecodedRecord decoded{.record = {}, .hash = hash};
+        if (const Json& format = json.at("format"); format != kJournalFormat)
+            return newer(expectedNumber, "is written in format " + format.dump());
         json.at("number").get_to(decoded.record.number);
         if (decoded.record.number != expectedNumber)
             return corrupt(expectedNumber, "its number is " + std::to_string(decoded.record.number));
@@ -232,17 +280,12 @@ Result<DecodedRecord> decodeRecord(std::string_view line, std::uint64_t expected
         for (std::size_t i = 0; i < std::size(kTypes); ++i) {
             if (type == kTypes[i]) {
                 decoded.record.event = eventOf(i, json.at("payload"));
+                if (!sameValue(toJson(decoded.record), json))
+                    return corrupt(expectedNumber, "a field is of another type, out of range, or unknown");
                 return decoded;
             }
         }
-        return Error{.code = "journal.newer",
-                     .place = {.file = {}, .line = static_cast<int>(expectedNumber)},
-                     .message = "Event " + std::to_string(expectedNumber) +
-                                " is of a type that this program does not "
-                                "know: “" +
-                                type + "”.",
-                     .remedy = "Open the session with a newer version.",
-                     .values = {std::to_string(expectedNumber), type}};
+        return newer(expectedNumber, "is of a type that this program does not know: “" + type + "”");
     } catch (const std::exception& exception) {
         return corrupt(expectedNumber, exception.what());
     }

@@ -11,12 +11,17 @@ namespace {
 /// A session of some hundred trials with a library of some thousand motions stays far below this.
 constexpr std::uint64_t kLongestJournal = 512ull << 20;
 
-bool holdsWholeRecord(std::string_view text) {
-    for (std::size_t newline = text.find('\n'); newline != std::string_view::npos;
-         newline = text.find('\n')) {
-        if (isWholeLine(text.substr(0, newline)))
+/// Whether a record that was written whole ends before some line break of `text` and does not begin with it.
+/// It need not begin a line: the byte that is damaged may be the line break before it.
+bool holdsLaterRecord(std::string_view text) {
+    constexpr std::string_view kBegin = "{\"format\":";
+    for (std::size_t begin = text.find(kBegin, 1); begin != std::string_view::npos;
+         begin = text.find(kBegin, begin + 1)) {
+        const std::size_t newline = text.find('\n', begin);
+        if (newline == std::string_view::npos)
+            return false;
+        if (isWholeLine(text.substr(begin, newline - begin)))
             return true;
-        text.remove_prefix(newline + 1);
     }
     return false;
 }
@@ -38,7 +43,7 @@ Result<JournalReading> readJournal(const FileSystem& files, const std::string& p
             // A power cut garbles what was being written, and nothing whole stands behind that. A whole
             // record behind a bad line shows that the line was once written and synced, and has been damaged
             // since.
-            if (decoded.error().code == "journal.corrupt" && !holdsWholeRecord(rest.substr(newline + 1)))
+            if (decoded.error().code == "journal.corrupt" && !holdsLaterRecord(rest))
                 break;
             Error error = decoded.error();
             error.place.file = path;

@@ -22,8 +22,11 @@ struct JournalReading {
     std::string lastHash = {};
 };
 
-/// Reads every whole record. A last line that is cut short is torn, not an error; a bad line before the last
-/// one is "journal.corrupt" with its event number, and nothing is changed on disk.
+/// Reads every whole record. What stands behind the last whole record is torn, not an error: it was being
+/// written when the program or the power ended. A bad line with a whole record behind it was once written and
+/// synced, so it is "journal.corrupt" with its event number. Nothing is changed on disk. (Damage to the very
+/// last line cannot be told from a torn one; JournalWriter::resume keeps those bytes.)
+/// @return also "journal.newer" (decodeRecord), "file.…".
 Result<JournalReading> readJournal(const FileSystem& files, const std::string& path);
 
 /// Appends events to one journal. `files` and `clock` must outlive it.
@@ -38,6 +41,7 @@ public:
 
     /// Appends and syncs: when it returns a record, that record survives a power cut. After an error nothing
     /// counts as written; the next call first cuts off what may stand behind the last good record.
+    /// @throws std::invalid_argument as encodeRecord does; then nothing was written.
     Result<Record> append(Event event);
 
 private:

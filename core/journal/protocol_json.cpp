@@ -112,8 +112,15 @@ void from_json(const Json& json, Protocol& p) {
     json.at("practicePairs").get_to(p.practicePairs);
     json.at("catchPairs").get_to(p.catchPairs);
     json.at("scenes").get_to(p.scenes);
+    if (p.levels < 1 || p.levels > 7)
+        throw std::invalid_argument("the protocol has " + std::to_string(p.levels) + " confidence levels");
+    for (const Texts& texts : p.texts)
+        if (texts.confidence.size() != static_cast<std::size_t>(p.levels))
+            throw std::invalid_argument("the protocol's texts do not have one word per confidence level");
     const std::size_t d = p.features.size();
-    if (p.texts.empty() || p.table.raw.columns != d || p.table.standardised.columns != d ||
+    if (p.texts.empty())
+        throw std::invalid_argument("the protocol has no texts");
+    if (p.table.raw.columns != d || p.table.standardised.columns != d ||
         p.table.standardisation.size() != d || p.table.raw.rows != p.table.motions.size() ||
         p.table.standardised.rows != p.table.motions.size())
         throw std::invalid_argument("the protocol's feature table does not fit its features and motions");

@@ -3,6 +3,7 @@
 
 #include <algorithm>
 #include <cerrno>
+#include <stdexcept>
 #include <sys/random.h>
 #include <system_error>
 
@@ -45,6 +46,8 @@ Result<SessionFolder> createSessionFolder(FileSystem& files, const std::string& 
                                           const std::string& id, const std::string& code) {
     if (auto checked = checkParticipantCode(code); !checked)
         return checked.error();
+    if (!isId(id))
+        throw std::invalid_argument("createSessionFolder: the id is not 32 lower-case hexadecimal digits");
     const bool pilot = kind != SessionKind::Participant;
     SessionFolder folder{
         .path = study + (pilot ? "/pilots/" : "/sessions/") + id, .id = id, .code = code, .pilot = pilot};

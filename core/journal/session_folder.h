@@ -28,7 +28,10 @@ struct SessionFolder {
 Result<void> checkParticipantCode(const std::string& code);
 
 /// Makes the folder of a new session, its code file written and synced. The journal is not there yet.
-/// @param id 32 hexadecimal digits from the operating system's random source, never derived from the code.
+/// @param id 32 lower-case hexadecimal digits from the operating system's random source, never derived from
+/// the code.
+/// @return "session.code", "file.exists", "file.…".
+/// @throws std::invalid_argument if `id` is not that.
 Result<SessionFolder> createSessionFolder(FileSystem& files, const std::string& study, SessionKind kind,
                                           const std::string& id, const std::string& code);
 

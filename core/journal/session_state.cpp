@@ -2,12 +2,12 @@
 #include "core/journal/session_state.h"
 
 #include <algorithm>
-#include <cstdlib>
 
 namespace whichway {
 namespace {
 
-/// Applies one event to a copy of the state; `refuse` says why it cannot follow.
+/// Applies one event. Every condition is checked before anything changes, so that a refused event leaves the
+/// state as it was; `refusal` says why.
 class Step {
 public:
     Step(SessionState& state, const Record& record) : s_(state), record_(record) {}
@@ -17,13 +17,19 @@ public:
     void operator()(const SessionBegan& began) {
         if (!require(s_.events == 0, "a session begins only once"))
             return;
+        const int trials = static_cast<int>(began.schedule.size());
+        for (const ScheduledTrial& trial : began.schedule)
+            if (!require(trial.repeatOf >= 0 && trial.repeatOf <= trials,
+                         "a scheduled trial repeats one that is not there"))
+                return;
         s_.began = began;
         s_.firstTime = record_.time;
     }
 
     void operator()(const InstructionShown& shown) {
         const int pages = static_cast<int>(texts().instructions.size());
-        if (!running() || !require(!s_.onStage, "a pair is on the stage") ||
+        if (!running() || !require(!s_.paused, "the session is paused") ||
+            !require(!s_.onStage, "a pair is on the stage") ||
             !require(shown.page == s_.instructionPage + 1 && shown.page <= pages + 1,
                      "another page comes first"))
             return;
@@ -33,7 +39,17 @@ public:
 
     void operator()(const PlanAdopted& plan) {
         if (!running() ||
-            !require(plan.pairs.size() == plan.information.size(), "its lists differ in length"))
+            !require(plan.pairs.size() == plan.information.size(), "its lists differ in length") ||
+            !require(std::all_of(plan.known.begin(), plan.known.end(),
+                                 [&](int trial) { return isAnsweredMain(trial); }),
+                     "it knows an answer that was not given") ||
+            !require(std::all_of(plan.pending.begin(), plan.pending.end(),
+                                 [&](const NamedPair& p) { return row(p.left) >= 0 && row(p.right) >= 0; }) &&
+                         std::all_of(plan.pairs.begin(), plan.pairs.end(),
+                                     [&](const NamedPair& p) {
+                                         return row(p.left) >= 0 && row(p.left) < row(p.right);
+                                     }),
+                     "its pairs are not in the feature table"))
             return;
         s_.queue.clear();
         for (std::size_t i = 0; i < plan.pairs.size(); ++i)
@@ -52,11 +68,11 @@ public:
         const NamedPair pair{shown.left, shown.right};
         if (const auto before = s_.shown.find(shown.trial); before != s_.shown.end()) {
             const TrialShown& first = before->second.shown;
-            if (!require(pair == NamedPair{first.left, first.right},
+            if (!require(pair == NamedPair{first.left, first.right} && shown.kind == first.kind,
                          "the trial showed other motions before") ||
                 !require(!s_.onStage || s_.onStage->trial == shown.trial, "another pair is on the stage"))
                 return;
-        } else if (!showFirst(shown, pair, schedule[static_cast<std::size_t>(shown.trial - 1)])) {
+        } else if (!showFirst(shown, pair, scheduled(shown.trial))) {
             return;
         }
         s_.onStage = shown;
@@ -67,7 +83,7 @@ public:
     void operator()(const AnswerGiven& given) {
         if (!running() || !require(!s_.paused, "the session is paused") ||
             !require(s_.onStage && s_.onStage->trial == given.trial, "that trial is not on the stage") ||
-            !require(std::abs(given.answer) <= s_.began.protocol.levels &&
+            !require(given.answer >= -s_.began.protocol.levels && given.answer <= s_.began.protocol.levels &&
                          (given.answer != 0 || s_.began.protocol.cannotTell),
                      "the study has no such answer"))
             return;
@@ -101,7 +117,10 @@ public:
     }
 
     void operator()(const BreakShown& shown) {
-        if (!running() || !require(!s_.onStage, "a pair is on the stage"))
+        if (!running() || !require(!s_.paused, "the session is paused") ||
+            !require(!s_.onStage, "a pair is on the stage") ||
+            !require(!s_.answers.empty() && s_.answers.back().trial == shown.afterTrial,
+                     "that trial was not the last to be answered"))
             return;
         s_.inBreak = true;
         s_.breakAfter = shown.afterTrial;
@@ -163,6 +182,32 @@ private:
     bool begun() { return require(s_.events > 0, "the session has not begun"); }
     bool running() { return begun() && require(!s_.ended, "the session has ended"); }
 
+    bool isAnsweredMain(int trial) const {
+        return std::any_of(s_.answers.begin(), s_.answers.end(), [&](const AnsweredTrial& answer) {
+            return answer.trial == trial && answer.kind == TrialKind::Main;
+        });
+    }
+
+    /// Of the feature table, or -1.
+    std::ptrdiff_t row(const std::string& motion) const {
+        const auto& motions = s_.began.protocol.table.motions;
+        const auto found = std::find(motions.begin(), motions.end(), motion);
+        return found == motions.end() ? -1 : found - motions.begin();
+    }
+
+    /// Trials come in the schedule's order, but a held-out one may come early while a main pair is being
+    /// planned.
+    bool isTurnOf(int trial) const {
+        for (int earlier = 1; earlier < trial; ++earlier)
+            if (!s_.isAnswered(earlier))
+                return scheduled(earlier).kind == TrialKind::Main &&
+                       scheduled(trial).kind == TrialKind::HeldOut;
+        return true;
+    }
+    const ScheduledTrial& scheduled(int trial) const {
+        return s_.began.schedule[static_cast<std::size_t>(trial - 1)];
+    }
+
     const Texts& texts() const {
         static const Texts none;
         for (const Texts& texts : s_.began.protocol.texts)
@@ -173,6 +218,7 @@ private:
 
     bool showFirst(const TrialShown& shown, const NamedPair& pair, const ScheduledTrial& scheduled) {
         if (!require(!s_.onStage, "another pair is on the stage") ||
+            !require(isTurnOf(shown.trial), "an earlier trial comes first") ||
             !require(shown.kind == scheduled.kind, "the schedule has another kind of trial there"))
             return false;
         ShownTrial first{.shown = shown};

@@ -74,8 +74,22 @@ struct SessionState {
     int answered(TrialKind kind) const;
 };
 
-/// Applies one more record. @return "journal.order" if the event cannot follow (e.g. an answer without a pair
-/// on the stage): then `state` is unchanged.
+/// Applies one more record.
+///
+/// - Trials are shown in the schedule's order, except that a held-out one may come early while the next is a
+/// main
+///   one. A main trial, when first shown, takes the front of the queue, turned as the schedule says; any
+///   other shows what is scheduled.
+/// - Showing a trial again (after a pause, an undo or a resumption) names the same motions and takes nothing
+/// from
+///   the queue.
+/// - Only the pair on the stage can be answered, with an answer that the study has, while not paused.
+/// - Only the answer just given can be undone, until something else is shown; its pair is on the stage again.
+/// - A plan replaces the queue. It knows only answers of main trials that stand, and pairs of the feature
+/// table.
+/// - After the end only notes and one estimate follow.
+///
+/// @return "journal.order" if the event cannot follow: then `state` is unchanged.
 Result<void> apply(SessionState& state, const Record& record);
 
 /// The state after all records, the first of which must be SessionBegan.

@@ -113,8 +113,11 @@ TEST(LineSession, OfFortyAnswersKeepsEveryAnswerThroughUndoPauseBadLinesAndAnInt
         ASSERT_TRUE(pair);
         EXPECT_EQ(person.child().finish(), 1) << "the input ended before the session did";
         session = sessionPathIn(person.child().errors());
-        lastTrial = person.confirmed.empty() ? 0 : answers.rbegin()->first;
-        lastDigest = person.confirmed[lastTrial];
+        for (const Json& said : person.heard)
+            if (said["type"] == "saved") {
+                lastTrial = said["trial"].get<int>();
+                lastDigest = said["digest"].get<std::string>();
+            }
     }
     ASSERT_NE(session, "");
 

@@ -63,8 +63,7 @@ inline std::vector<std::string> programWith(std::vector<std::string> arguments) 
 
 /// Runs the program to its end, without a display.
 inline Finished runProgram(std::vector<std::string> arguments, const std::string& input = "") {
-    return run(programWith(std::move(arguments)), input,
-               {"DISPLAY=", "WAYLAND_DISPLAY=", "QT_QPA_PLATFORM="});
+    return run(programWith(std::move(arguments)), input, {"DISPLAY=", "WAYLAND_DISPLAY="});
 }
 
 /// The path behind "Session: " on standard error.

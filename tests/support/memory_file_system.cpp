@@ -175,10 +175,12 @@ Result<std::unique_ptr<AppendFile>> MemoryFileSystem::openAppend(const std::stri
         if (auto stepped = step(path); !stepped)
             return stepped.error();
         entries_[path] = std::make_shared<Inode>();
-        if (auto stepped = step(path); !stepped)
-            return stepped.error();
-        syncDirectory(parentOf(path));
     }
+    if (kind(path) != EntryKind::File)
+        return error("file.failed", path);
+    if (auto stepped = step(path); !stepped)
+        return stepped.error();
+    syncDirectory(parentOf(path));
     return std::unique_ptr<AppendFile>(std::make_unique<Appender>(*this, entries_.at(path), path));
 }
 
@@ -220,8 +222,10 @@ Result<void> MemoryFileSystem::truncate(const std::string& path, std::uint64_t l
 }
 
 Result<void> MemoryFileSystem::rename(const std::string& from, const std::string& to) {
-    if (kind(from) == EntryKind::Missing || kind(to) != EntryKind::Missing)
-        return error("file.failed", to);
+    if (kind(from) == EntryKind::Missing)
+        return error("file.missing", to);
+    if (kind(to) != EntryKind::Missing)
+        return error("file.exists", to);
     if (auto stepped = step(to); !stepped)
         return stepped;
     Entries moved;
@@ -244,6 +248,9 @@ Result<void> MemoryFileSystem::rename(const std::string& from, const std::string
 Result<void> MemoryFileSystem::remove(const std::string& path) {
     if (kind(path) == EntryKind::Missing)
         return error("file.missing", path);
+    if (const auto below = entries_.lower_bound(path + "/");
+        below != entries_.end() && below->first.starts_with(path + "/"))
+        return error("file.failed", path);
     if (auto stepped = step(path); !stepped)
         return stepped;
     entries_.erase(path);

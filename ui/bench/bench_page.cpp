@@ -259,8 +259,8 @@ void BenchPage::refreshHead() {
         parts << tr("practice pair %1 of %2").arg(where.number).arg(where.total);
     else
         parts << tr("pair %1 of %2").arg(where.number).arg(where.total);
-    if (!state.ended && prompt.kind == PromptKind::Trial)
-        parts << trialKindText(prompt.trialKind);
+    if (!state.ended && state.onStage && !where.practice)
+        parts << trialKindText(state.onStage->kind);
     if (!state.ended && where.breakAfter > 0)
         parts << tr("break after pair %1").arg(where.breakAfter);
     where_->setText(parts.join(QStringLiteral("   ")));
@@ -320,10 +320,11 @@ void BenchPage::refreshPlanner() {
                                            return trial.kind == TrialKind::Main && !state.isAnswered(i) &&
                                                   !(state.onStage && state.onStage->trial == i);
                                        });
-    plan_->setText(state.ended        ? tr("Session over")
-                   : allShown         ? tr("Nothing left to plan")
-                   : status.planReady ? tr("Next pairs ready")
-                                      : tr("Planning"));
+    plan_->setText(state.ended           ? tr("Session over")
+                   : allShown            ? tr("Nothing left to plan")
+                   : status.planReady    ? tr("Next pairs ready")
+                   : state.plans.empty() ? tr("First plan is asked for")
+                                         : tr("Planning"));
     queue_->setText(countText(status.queued, tr("pair"), tr("pairs")));
     known_->setText(state.plans.empty() ? tr("no plan yet")
                                         : countText(status.knownAnswers, tr("answer"), tr("answers")));

@@ -5,6 +5,7 @@
 
 #include <QKeyEvent>
 #include <QPainter>
+#include <QShortcut>
 #include <algorithm>
 
 namespace whichway {
@@ -25,8 +26,12 @@ KeyButton::KeyButton(const QString& name, const QString& text, Weight weight, st
     setFocusPolicy(Qt::StrongFocus);
     setAttribute(Qt::WA_Hover);
     setSizePolicy(QSizePolicy::Fixed, QSizePolicy::Fixed);
-    if (!key.isEmpty())
-        setShortcut(key);
+    if (!key.isEmpty()) {
+        // Not the button's own shortcut: that one clicks a tenth of a second late and is lost with a new
+        // text.
+        auto* shortcut = new QShortcut(key, this);
+        connect(shortcut, &QShortcut::activated, this, &QAbstractButton::click);
+    }
 }
 
 QSize KeyButton::sizeHint() const {
@@ -45,6 +50,16 @@ void KeyButton::keyPressEvent(QKeyEvent* event) {
         return;
     }
     QAbstractButton::keyPressEvent(event);
+}
+
+void KeyButton::focusInEvent(QFocusEvent* event) {
+    showsFocus_ = event->reason() != Qt::MouseFocusReason && event->reason() != Qt::ActiveWindowFocusReason;
+    QAbstractButton::focusInEvent(event);
+}
+
+void KeyButton::focusOutEvent(QFocusEvent* event) {
+    showsFocus_ = false;
+    QAbstractButton::focusOutEvent(event);
 }
 
 void KeyButton::paintEvent(QPaintEvent*) {
@@ -67,7 +82,7 @@ void KeyButton::paintEvent(QPaintEvent*) {
     painter.setPen(QPen(edge, 1));
     painter.setBrush(fill);
     painter.drawRoundedRect(body.adjusted(0.5, 0.5, -0.5, -0.5), space::kRadius, space::kRadius);
-    if (hasFocus()) {
+    if (showsFocus_) {
         painter.setPen(QPen(c.accent, 2));
         painter.setBrush(Qt::NoBrush);
         painter.drawRoundedRect(QRectF(rect()).adjusted(1, 1, -1, -1), space::kRadius + 2,

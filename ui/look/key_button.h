@@ -26,6 +26,8 @@ public:
 protected:
     void paintEvent(QPaintEvent* event) override;
     void keyPressEvent(QKeyEvent* event) override;
+    void focusInEvent(QFocusEvent* event) override;
+    void focusOutEvent(QFocusEvent* event) override;
 
 private:
     QString keyText() const {
@@ -35,6 +37,7 @@ private:
     Weight weight_;
     std::optional<Icon> icon_;
     QKeySequence key_;
+    bool showsFocus_ = false; ///< the ring is for those who came by the keyboard
 };
 
 } // namespace whichway

@@ -3,6 +3,7 @@
 
 #include <QCoreApplication>
 #include <QLocale>
+#include <QRegularExpression>
 #include <algorithm>
 #include <cmath>
 
@@ -39,8 +40,11 @@ QString unitText(const std::string& unit) {
     if (unit == "1")
         return {};
     QString text = QString::fromStdString(unit);
-    text.replace(QLatin1String("^2"), QString(QChar(0x00b2)));
-    text.replace(QLatin1String("^3"), QString(QChar(0x00b3)));
+    static const QRegularExpression kPower(QStringLiteral("([A-Za-z])\\^?([23])"));
+    for (auto found = kPower.match(text); found.hasMatch(); found = kPower.match(text)) {
+        const QChar power(found.captured(2) == QLatin1String("2") ? 0x00b2 : 0x00b3);
+        text.replace(found.capturedStart(), found.capturedLength(), found.captured(1) + power);
+    }
     return text;
 }
 

@@ -15,7 +15,7 @@ QString numberText(double value, int decimals);
 QString shortNumber(double value);
 /// "3.0 s"; the unit "1" and the empty unit are not written.
 QString withUnit(double value, int decimals, const QString& unit);
-/// A unit as it is read: "m/s³" of "m/s^3"; empty for "1".
+/// A unit as it is read: "m/s³" of "m/s3"; empty for "1".
 QString unitText(const std::string& unit);
 /// "90 % interval 1.9 to 5.0 s".
 QString intervalText(double low, double high, int decimals, const QString& unit, int percent = 90);

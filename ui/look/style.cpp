@@ -1,6 +1,8 @@
 // SPDX-License-Identifier: GPL-3.0-or-later
 #include "ui/look/style.h"
 
+#include "ui/look/icons.h"
+
 #include <QApplication>
 #include <QLabel>
 #include <QStyleFactory>
@@ -33,9 +35,19 @@ QString styleSheetOf(const Colours& c) {
                     c.soft.name(), c.ink.name(), c.ink2.name(), c.warnSoft.name()) +
            QStringLiteral("QFrame[panel=\"bad\"] { background: %1; border-radius: 3px; }"
                           "QFrame[panel=\"empty\"] { border: 1px dashed %2; border-radius: 3px; }"
+                          "QRadioButton::indicator { width: 14px; height: 14px; border: 1px solid %2;"
+                          " border-radius: 8px; background: %4; }"
+                          "QRadioButton::indicator:checked { width: 6px; height: 6px; border: 5px solid %5; }"
+                          "QRadioButton::indicator:focus { border-color: %5; }"
                           "QFrame[panel=\"plain\"] { border: 1px solid %3; border-radius: 3px; }"
+                          "QScrollBar { background: transparent; border: none; margin: 0; }"
+                          "QScrollBar:vertical { width: 10px; } QScrollBar:horizontal { height: 10px; }"
+                          "QScrollBar::handle { background: %2; border-radius: 3px; margin: 2px;"
+                          " min-height: 32px; min-width: 32px; }"
+                          "QScrollBar::add-line, QScrollBar::sub-line { width: 0; height: 0; }"
+                          "QScrollBar::add-page, QScrollBar::sub-page { background: transparent; }"
                           "QFrame[rule=\"true\"] { background: %3; border: none; }")
-               .arg(c.badSoft.name(), c.edge.name(), c.line.name());
+               .arg(c.badSoft.name(), c.edge.name(), c.line.name(), c.raised.name(), c.accent.name());
 }
 
 QColor colourOf(Ink ink, const Colours& c) {
@@ -67,6 +79,7 @@ void applyLook(QApplication& application, Theme theme) {
     initIcons();
     QApplication::setStyle(QStyleFactory::create(QStringLiteral("Fusion")));
     QApplication::setPalette(paletteOf(theme));
+    QApplication::setWindowIcon(iconOf(Icon::Way, coloursOf(theme).accent));
     application.setStyleSheet(styleSheetOf(coloursOf(theme)));
 }
 

@@ -57,7 +57,8 @@ QVariant LibraryModel::headerData(int section, Qt::Orientation orientation, int 
     if (orientation != Qt::Horizontal || section < 0 || section >= columnCount())
         return {};
     if (role == Qt::TextAlignmentRole)
-        return static_cast<int>((section < kDuration ? Qt::AlignLeft : Qt::AlignRight) | Qt::AlignBottom);
+        return static_cast<int>((section < kDuration ? Qt::AlignLeft : Qt::AlignRight) | Qt::AlignBottom |
+                                static_cast<int>(Qt::TextWordWrap));
     if (role != Qt::DisplayRole && role != Qt::ToolTipRole)
         return {};
     switch (section) {

@@ -32,7 +32,6 @@ QString homeShortened(const std::string& folder) {
 MainWindow::MainWindow(QWidget* parent) : QMainWindow(parent) {
     setObjectName(QStringLiteral("main"));
     setWindowTitle(tr("Whichway"));
-    setWindowIcon(iconOf(Icon::Way, coloursOf(palette()).accent));
     setMinimumSize(1180, 700);
     resize(1440, 900);
     study_ = new StudyPage;
@@ -69,6 +68,7 @@ MainWindow::MainWindow(QWidget* parent) : QMainWindow(parent) {
     study_->showNothing();
     showSessions({}, {});
     showTitle({});
+    goTo(Stop::Study);
 }
 
 QWidget* MainWindow::makeFrame() {
@@ -93,8 +93,10 @@ QWidget* MainWindow::makeFrame() {
     column->addLayout(top);
     column->addWidget(makePageRule());
     pages_ = new QStackedWidget;
-    for (QWidget* page : std::initializer_list<QWidget*>{study_, rehearsal_, bench_, review_, cohort_})
+    for (QWidget* page : std::initializer_list<QWidget*>{study_, rehearsal_, bench_, review_, cohort_}) {
+        page->setFocusPolicy(Qt::ClickFocus);
         pages_->addWidget(page);
+    }
     column->addWidget(pages_, 1);
     foot_ = new TitleBlock;
     column->addWidget(foot_);
@@ -152,12 +154,16 @@ void MainWindow::showSessions(const std::vector<SessionRow>& sessions, const std
 void MainWindow::setBenchPage(QWidget* page) {
     if (benchPage_) {
         bench_->removeWidget(benchPage_);
-        benchPage_->deleteLater();
+        delete benchPage_; // at once, for the session that it shows may be about to go
     }
     benchPage_ = page;
     if (page)
         bench_->addWidget(page);
     bench_->setCurrentWidget(page ? page : noBench_);
+    if (page)
+        goTo(Stop::Bench);
+    else
+        foot_->show();
 }
 
 void MainWindow::goTo(Stop stop) {
@@ -167,6 +173,7 @@ void MainWindow::goTo(Stop stop) {
     route_->setCurrent(stop);
     pages_->setCurrentIndex(static_cast<int>(stop));
     // The bench has its action bar at the foot.
+    pages_->currentWidget()->setFocus(Qt::OtherFocusReason);
     foot_->setVisible(stop != Stop::Bench || !benchPage_);
 }
 

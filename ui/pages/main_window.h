@@ -31,7 +31,8 @@ public:
     /// @param running id of the session that runs in this program, or empty
     void showSessions(const std::vector<SessionRow>& sessions, const std::string& running);
 
-    /// Takes the page over and shows it at the bench stop; nullptr takes the last one away and deletes it.
+    /// Takes the page over, puts it at the bench stop and goes there; nullptr takes the last one away and
+    /// deletes it at once (so not from within one of its own signals).
     void setBenchPage(QWidget* page);
     void goTo(Stop stop);
     Stop current() const { return current_; }

@@ -5,6 +5,7 @@
 
 #include <QKeyEvent>
 #include <QPainter>
+#include <QShortcut>
 #include <algorithm>
 
 namespace whichway {
@@ -20,7 +21,8 @@ RouteStop::RouteStop(const QString& name, const QString& text, const QKeySequenc
     setText(text);
     setAccessibleName(text);
     setToolTip(key.toString(QKeySequence::NativeText));
-    setShortcut(key);
+    auto* shortcut = new QShortcut(key, this);
+    connect(shortcut, &QShortcut::activated, this, &QAbstractButton::click);
     setCheckable(true);
     setAutoExclusive(true);
     setFocusPolicy(Qt::TabFocus);

@@ -16,9 +16,11 @@
 #include <QLabel>
 #include <QLineEdit>
 #include <QRadioButton>
+#include <QRegularExpression>
 #include <QSortFilterProxyModel>
 #include <QTableView>
 #include <QVBoxLayout>
+#include <algorithm>
 
 namespace whichway {
 namespace {
@@ -46,6 +48,28 @@ QString trialsOf(const TrialSettings& t) {
         .arg(t.repeat)
         .arg(t.catchTrials)
         .arg(t.identical);
+}
+
+/// Narrow columns whose headings break between words, so that as many features as can be stand side by side.
+void fitColumns(QTableView& table) {
+    const QFontMetrics metrics(fontOf(TextRole::Label));
+    table.resizeColumnsToContents();
+    for (int column = LibraryModel::kDuration; column < table.model()->columnCount(); ++column) {
+        const QString heading = table.model()->headerData(column, Qt::Horizontal).toString();
+        int widest = metrics.horizontalAdvance(QStringLiteral("00.00"));
+        for (const QString& word : heading.split(QRegularExpression(QStringLiteral("\\s+"))))
+            widest = std::max(widest, metrics.horizontalAdvance(word));
+        table.setColumnWidth(column, widest + 24);
+    }
+    table.setColumnWidth(LibraryModel::kPath, 150);
+    table.horizontalHeader()->setSectionResizeMode(LibraryModel::kPath, QHeaderView::Stretch);
+    int tallest = 0;
+    for (int column = 0; column < table.model()->columnCount(); ++column) {
+        const QRect room(0, 0, table.columnWidth(column) - 18, 1000);
+        const QString heading = table.model()->headerData(column, Qt::Horizontal).toString();
+        tallest = std::max(tallest, metrics.boundingRect(room, Qt::TextWordWrap, heading).height());
+    }
+    table.horizontalHeader()->setFixedHeight(tallest + 20);
 }
 
 } // namespace
@@ -156,8 +180,7 @@ QWidget* StudyPage::makeLibrary(const Study& study) {
     header->setMinimumSectionSize(56);
     table->setSortingEnabled(true);
     table->sortByColumn(LibraryModel::kName, Qt::AscendingOrder);
-    table->resizeColumnsToContents();
-    table->setColumnWidth(LibraryModel::kPath, 186);
+    fitColumns(*table);
     table->setMinimumHeight(240);
     column->addWidget(table, 1);
     return widget;

@@ -65,12 +65,15 @@ SessionController::Progress SessionController::progress() const {
         static_cast<int>(std::count_if(schedule.begin(), schedule.end(),
                                        [](const auto& trial) { return trial.kind == TrialKind::Practice; }));
     const int practised = state.answered(TrialKind::Practice);
-    progress.practice = now.kind == PromptKind::Trial || now.kind == PromptKind::Saved
-                            ? now.trialKind == TrialKind::Practice
-                            : practised < practices;
+    if (state.onStage)
+        progress.practice = state.onStage->kind == TrialKind::Practice;
+    else if (now.kind == PromptKind::Saved)
+        progress.practice = now.trialKind == TrialKind::Practice;
+    else
+        progress.practice = practised < practices;
     const int done = progress.practice ? practised : now.done - practised;
     progress.total = progress.practice ? practices : now.total - practices;
-    progress.number = std::min(progress.total, done + (now.kind == PromptKind::Trial ? 1 : 0));
+    progress.number = std::min(progress.total, done + (state.onStage ? 1 : 0));
     const int every = state.began.protocol.trials.breakAfter;
     if (every > 0 && !progress.practice) {
         const int next = (std::max(progress.number, 1) + every - 1) / every * every;

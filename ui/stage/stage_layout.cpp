@@ -75,8 +75,9 @@ void StageWindow::arrangePair() {
     y += paneHeight + between(10, 20);
     bar_->setGeometry(x, y, block, 8);
     y += 8 + between(10, 18);
-    const int replayWidth = outlineWidth(replay_);
-    place(replay_, (width() - replayWidth) / 2, y, replayWidth, replayHeight);
+    const int playWidth = std::max(outlineWidth(pause_), outlineWidth(replay_));
+    place(pause_, width() / 2 - 12 - playWidth, y, playWidth, replayHeight);
+    place(replay_, width() / 2 + 12, y, playWidth, replayHeight);
     y += replayHeight + between(10, 20);
     const int middle = cannotTell_ ? outlineWidth(cannotTell_) + 32 : 0;
     const int choiceWidth = cannotTell_ ? (block - middle - 32) / 2 : paneWidth;

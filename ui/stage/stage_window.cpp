@@ -57,6 +57,8 @@ void StageWindow::build() {
             return playback.isShown() ? playback.seconds() / playback.duration() : 0.0;
         },
         this);
+    pause_ = button("stage.pause", tr("Pause"), tr("P"), 21, Order::WordFirst);
+    pause_->setIconKind(Icon::Pause);
     replay_ = button("stage.replay", tr("Replay"), tr("Space"), 21, Order::WordFirst);
     replay_->setIconKind(Icon::Replay);
     left_ = button("stage.chooseLeft", fromUtf8(texts.left), QString(QChar(0x2190)), 26, Order::KeyFirst);
@@ -94,6 +96,7 @@ void StageWindow::build() {
 }
 
 void StageWindow::connectAll() {
+    connect(pause_, &StageButton::clicked, this, [this] { controller_.pause("participant"); });
     connect(replay_, &StageButton::clicked, this, &StageWindow::pressReplay);
     connect(left_, &StageButton::clicked, this, [this] { choose(Side::Left); });
     connect(right_, &StageButton::clicked, this, [this] { choose(Side::Right); });
@@ -146,7 +149,7 @@ void StageWindow::showView(View view) {
     view_ = view;
     const bool isPair = view == View::Pair;
     for (QWidget* part :
-         std::initializer_list<QWidget*>{question_, pair_, bar_, replay_, left_, right_, undo_})
+         std::initializer_list<QWidget*>{question_, pair_, bar_, pause_, replay_, left_, right_, undo_})
         part->setVisible(isPair);
     if (cannotTell_)
         cannotTell_->setVisible(isPair);
@@ -359,6 +362,9 @@ void StageWindow::pairKey(int key) {
     case Qt::Key_Space:
     case Qt::Key_R:
         pressReplay();
+        break;
+    case Qt::Key_P:
+        controller_.pause("participant");
         break;
     case Qt::Key_Left:
         choose(Side::Left);

@@ -20,9 +20,9 @@ class StagePanel;
 
 /// The participant's window. It shows what the session's prompt says and forwards what the participant
 /// presses; an answer counts as saved on the screen only when it is on disk. Grey only, and mirrored about
-/// its middle. Keys: Space or R replays, Left and Right choose, 0 cannot tell (where allowed), 1 … K how
-/// sure, Enter the next pair, Backspace takes back, Escape asks whether to stop. `controller` must outlive
-/// it.
+/// its middle. Keys: Space or R replays, P pauses, Left and Right choose, 0 cannot tell (where allowed), 1 …
+/// K how sure, Enter the next pair, Backspace takes back, Escape asks whether to stop. `controller` must
+/// outlive it.
 class StageWindow final : public QWidget {
     Q_OBJECT
 public:
@@ -73,6 +73,7 @@ private:
     QLabel* question_;
     PairView* pair_;
     StageBar* bar_;
+    StageButton* pause_;
     StageButton* replay_;
     StageButton* left_;
     StageButton* right_;
