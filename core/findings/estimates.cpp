@@ -31,7 +31,8 @@ double percentile(const std::vector<double>& sorted, double p) {
     const double part = position - static_cast<double>(below);
     if (part == 0 || below + 1 == sorted.size() || sorted[below] == sorted[below + 1])
         return sorted[below];
-    return sorted[below] + part * (sorted[below + 1] - sorted[below]);
+    const double between = (1 - part) * sorted[below] + part * sorted[below + 1];
+    return std::isnan(between) ? sorted[below] : between; // between the two infinities
 }
 
 bool isLog(const FeatureDefinition& feature) {

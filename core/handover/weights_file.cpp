@@ -93,7 +93,7 @@ std::string weightsFile(const SessionState& state, const SessionFindings& findin
     json["course"] = std::move(course);
     double worst = 0;
     for (const ScalarSummary& summary : findings.posterior.summaries)
-        worst = std::max(worst, summary.rHat);
+        worst = std::isnan(worst) || std::isnan(summary.rHat) ? std::nan("") : std::max(worst, summary.rHat);
     json["sampling"] = {{"converged", findings.posterior.converged},
                         {"draws", findings.posterior.draws.count()},
                         {"largest_r_hat", numberOrNull(worst)},

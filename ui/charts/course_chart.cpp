@@ -15,7 +15,7 @@
 namespace whichway {
 namespace {
 
-constexpr double kHead = 26, kFoot = 18, kLeft = 34, kRight = 8;
+constexpr double kHead = 26, kFoot = 18, kLeft = 26, kRight = 8;
 constexpr int kBandAlpha = 36;
 
 /// Heading, grid and tick texts; the curves are the chart's own.
@@ -32,11 +32,11 @@ public:
     void paint(QPainter* painter, const QStyleOptionGraphicsItem*, QWidget*) override {
         const QRectF area = chart_->plotArea();
         const QFontMetricsF metrics(style_.label);
-        painter->setFont(style_.text);
+        painter->setFont(style_.label);
         painter->setPen(style_.colours.ink);
         painter->drawText(
             QPointF(0, 12),
-            QFontMetricsF(style_.text).elidedText(plot_.heading, Qt::ElideRight, chart_->rect().width()));
+            QFontMetricsF(style_.label).elidedText(plot_.heading, Qt::ElideRight, chart_->rect().width()));
         painter->setFont(style_.label);
         for (std::size_t i = 0; i < plot_.ticks.size(); ++i) {
             const double y = chart_->mapToPosition({0, plot_.ticks[i]}, series_).y();

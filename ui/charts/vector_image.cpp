@@ -23,8 +23,11 @@ QString drawingOf(const QByteArray& document) {
                                           QRegularExpression::DotMatchesEverythingOption);
     drawing.remove(kHead);
     // The page's font is as good as the machine's that drew it, and there for sure.
-    static const QRegularExpression kFamily(QStringLiteral(" font-family=\"[^\"]*\""));
+    static const QRegularExpression kFamily(QStringLiteral("\\sfont-family=\"[^\"]*\""));
     drawing.remove(kFamily);
+    // A true minus may come from another font than the digits behind it; placed apart they would gape.
+    static const QRegularExpression kApart(QStringLiteral("\u2212</text>\\s*<text[^>]*>"));
+    drawing.replace(kApart, QString(QChar(0x2212)));
     return drawing.trimmed();
 }
 

@@ -19,8 +19,8 @@
 namespace whichway {
 namespace {
 
-// px at 96 dpi of an A4 page with margins of 18 mm, and of its two and three columns.
-constexpr double kWide = 658, kHalf = 318, kThird = 208;
+// px at 96 dpi of an A4 page with margins of 18 mm, and of its two and four columns.
+constexpr double kWide = 658, kHalf = 318, kQuarter = 155;
 constexpr int kFewestAnswers = 5; // for a chart
 
 } // namespace
@@ -112,7 +112,7 @@ void ReportPage::marks() {
 
 void ReportPage::weights() {
     out_.open("div");
-    out_.open("h2").text(tr("Weights")).line("small", tr("direction, 90 % intervals")).close();
+    out_.open("h2").text(tr("Weights")).line("small", tr("direction, 90\u00a0% intervals")).close();
     if (findings_.mainAnswers < kFewestAnswers) {
         out_.line("p", tr("Fewer than %1 main answers: too few to draw.").arg(kFewestAnswers));
     } else {
@@ -148,10 +148,11 @@ void ReportPage::tradeOffs() {
             out_.close();
         }
         out_.close().close();
-        out_.line("p",
-                  tr("Medians with 90 % intervals; grey where it is open which way it goes. Weights hold "
-                     "within this library and its scaling and are not comparable with other studies."),
-                  QStringLiteral("side"));
+        out_.line(
+            "p",
+            tr("Medians with 90\u00a0% intervals; grey where it is open which way it goes. Weights hold "
+               "within this library and its scaling and are not comparable with other studies."),
+            QStringLiteral("side"));
     } else {
         out_.line("p",
                   found.empty()
@@ -202,7 +203,7 @@ void ReportPage::prediction() {
         out_.line("p", tr("The estimate foretold %1 of %2 held-out pairs, which taught it nothing.")
                            .arg(found.heldOut.count)
                            .arg(found.heldOut.of));
-    QString side = tr("Exact 90 % intervals (Clopper and Pearson).");
+    QString side = tr("Exact 90\u00a0% intervals (Clopper and Pearson).");
     if (found.logScore)
         side += tr(" Mean log score of the held-out answers %1; guessing scores %2.")
                     .arg(numberText(*found.logScore, 2),
@@ -212,7 +213,7 @@ void ReportPage::prediction() {
     if (found.reachable)
         side +=
             tr(" If %1 of %2 repeats answered alike were the person's true agreement, the best reachable "
-               "accuracy would lie between %3 % and %4 %.")
+               "accuracy would lie between %3\u00a0% and %4\u00a0%.")
                 .arg(QString::number(findings_.consistency.repeats.count),
                      QString::number(findings_.consistency.repeats.of),
                      numberText(100 * found.reachable->low, 0), numberText(100 * found.reachable->high, 0));
@@ -226,12 +227,12 @@ void ReportPage::course() {
         return;
     out_.open("section");
     out_.open("h2").text(tr("Course over the session"));
-    out_.line("small", tr("direction after so many main answers: median and 90 % band, one axis for all "
+    out_.line("small", tr("direction after so many main answers: median and 90\u00a0% band, one axis for all "
                           "features"))
         .close();
     out_.open("div", QStringLiteral("courses"));
     for (const CoursePlot& plot : coursePlots(state_.began.protocol, findings_))
-        out_.drawing(courseImage(plot, style_, {kThird, 124}, tr("Course of %1").arg(plot.heading)));
+        out_.drawing(courseImage(plot, style_, {kQuarter, 116}, tr("Course of %1").arg(plot.heading)));
     out_.close().close();
 }
 
@@ -245,7 +246,7 @@ void ReportPage::motions() {
     out_.close();
     out_.line("p",
               tr("Acting on this estimate is expected to cost %1 of what choosing at random would cost.")
-                  .arg(numberText(100 * findings_.motions.expectedRegret, 1) + tr(" %")),
+                  .arg(numberText(100 * findings_.motions.expectedRegret, 1) + tr("\u00a0%")),
               QStringLiteral("side"));
     out_.close();
 }

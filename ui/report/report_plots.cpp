@@ -84,7 +84,7 @@ IntervalPlot predictionPlot(const SessionFindings& findings) {
     IntervalPlot plot{.from = 0, .to = 1, .reference = 0.5, .dashedReference = true, .labelWidth = 118};
     plot.referenceText = Words::tr("guessing");
     for (const double at : {0.0, 0.5, 1.0})
-        plot.ticks.push_back({.at = at, .text = QString::number(100 * at) + Words::tr(" %")});
+        plot.ticks.push_back({.at = at, .text = QString::number(100 * at) + Words::tr("\u00a0%")});
     const Prediction& prediction = findings.prediction;
     if (prediction.reachable) {
         plot.band = {prediction.reachable->low, prediction.reachable->high};

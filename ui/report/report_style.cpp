@@ -34,7 +34,7 @@ svg + .side, table + .side, .pair + .side, svg + p { margin-top: 2.5mm; }
 .chip.bad { color: %8; background: %9; border-color: %8; }
 svg { display: block; max-width: 100%; height: auto; }
 svg text { font-family: inherit; }
-.courses { display: grid; grid-template-columns: 1fr 1fr 1fr; gap: 3mm 4mm; }
+.courses { display: grid; grid-template-columns: repeat(4, 1fr); gap: 3mm; }
 table { border-collapse: collapse; width: 100%; font-size: 8.8pt; }
 th { text-align: left; font-weight: normal; color: %3; padding: 0.8mm 3mm 0.8mm 0; vertical-align: bottom; }
 td { padding: 0.8mm 3mm 0.8mm 0; border-top: 1px solid %4; vertical-align: top; }
@@ -47,6 +47,7 @@ table.trades td:first-child { font-weight: bold; color: %1; }
 table.trades td:nth-child(2) { color: %1; white-space: normal; }
 table.trades tr.open td { color: %3; font-weight: normal; }
 table.checks td:nth-child(-n+2) { color: %1; }
+table.checks td:first-child, table.checks td:last-child { white-space: nowrap; }
 table.numbers td, table.log td { color: %1; white-space: nowrap; }
 table.numbers td:first-child { white-space: normal; }
 table.numbers td:not(:first-child), table.numbers th:not(:first-child) { text-align: right; }

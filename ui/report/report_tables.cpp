@@ -102,7 +102,7 @@ ReportTable consistencyTable(const SessionState& state, const SessionFindings& f
                               numberText(findings.sideBias.median, 2) + QStringLiteral(" (") +
                                   rangeText(findings.sideBias.low, findings.sideBias.high, 2) +
                                   QLatin1Char(')'),
-                              Words::tr("interval without 0")});
+                              Words::tr("0 outside")});
     table.rows.push_back(
         {Words::tr("Repeats alike"),
          found.repeats.of + found.repeats.cannotTell > 0 ? ofText(found.repeats) : Words::tr("none shown"),
@@ -110,7 +110,7 @@ ReportTable consistencyTable(const SessionState& state, const SessionFindings& f
     table.rows.push_back(
         {Words::tr("Catch pairs"),
          found.catches.of + found.catches.cannotTell > 0 ? ofText(found.catches) : Words::tr("none shown"),
-         Words::tr("any unexpected")});
+         Words::tr("any other")});
     table.rows.push_back({Words::tr("Identical, left"),
                           found.identicalLeft.of + found.identicalLeft.cannotTell > 0
                               ? ofText(found.identicalLeft)
@@ -118,18 +118,14 @@ ReportTable consistencyTable(const SessionState& state, const SessionFindings& f
                           Words::tr("not judged")});
     if (found.confidence.size() > 1)
         table.rows.push_back({Words::tr("Words used"), wordsUsed(state, found), Words::tr("one in 9 of 10")});
-    table.rows.push_back(
-        {Words::tr("Response time"),
-         found.medianResponseTime
-             ? Words::tr("median %1").arg(withUnit(*found.medianResponseTime, 1, QStringLiteral("s")))
-             : Words::tr("not known"),
-         Words::tr("not judged")});
     if (found.medianResponseTime)
-        table.rows.push_back({Words::tr("Quick answers"), QString::number(found.quick),
+        table.rows.push_back({Words::tr("Quick answers"),
+                              Words::tr("%1 (median %2)")
+                                  .arg(QString::number(found.quick),
+                                       withUnit(*found.medianResponseTime, 1, QStringLiteral("s"))),
                               Words::tr("below %1").arg(withUnit(found.quickBelow, 1, QStringLiteral("s")))});
     if (found.drift)
-        table.rows.push_back({Words::tr("Predicted, drift"),
-                              Words::tr("%1 points").arg(numberText(*found.drift, 0)),
+        table.rows.push_back({Words::tr("Drift"), Words::tr("%1 points").arg(numberText(*found.drift, 0)),
                               Words::tr("below %1").arg(numberText(-20, 0))});
     return table;
 }
@@ -138,9 +134,10 @@ ReportTable weightsTable(const SessionState& state, const WeightFindings& weight
     const Protocol& protocol = state.began.protocol;
     ReportTable table{.name = Words::tr("Weights in numbers"),
                       .cssClass = QStringLiteral("numbers"),
-                      .headings = {Words::tr("Feature"), Words::tr("Direction"), Words::tr("90 % interval"),
-                                   Words::tr("Weight per unit"), Words::tr("90 % interval"),
-                                   Words::tr("Unit"), Words::tr("P(more is liked)")}};
+                      .headings = {Words::tr("Feature"), Words::tr("Direction"),
+                                   Words::tr("90\u00a0% interval"), Words::tr("Weight per unit"),
+                                   Words::tr("90\u00a0% interval"), Words::tr("Unit"),
+                                   Words::tr("P(more is liked)")}};
     for (std::size_t j = 0; j < weights.features.size(); ++j) {
         const WeightFinding& weight = weights.features[j];
         const FeatureDefinition& feature = protocol.features[j];
@@ -160,8 +157,9 @@ ReportTable weightsTable(const SessionState& state, const WeightFindings& weight
 ReportTable diagnosticsTable(const Protocol& protocol, const Posterior& posterior) {
     ReportTable table{.name = Words::tr("Diagnostics of the sampling"),
                       .cssClass = QStringLiteral("numbers"),
-                      .headings = {Words::tr("Parameter"), Words::tr("Median"), Words::tr("90 % interval"),
-                                   Words::tr("R-hat"), Words::tr("ESS bulk"), Words::tr("ESS tail")}};
+                      .headings = {Words::tr("Parameter"), Words::tr("Median"),
+                                   Words::tr("90\u00a0% interval"), Words::tr("R-hat"), Words::tr("ESS bulk"),
+                                   Words::tr("ESS tail")}};
     for (const ScalarSummary& summary : posterior.summaries)
         table.rows.push_back({parameterText(protocol, summary.name), numberText(summary.median, 2),
                               rangeText(summary.low, summary.high, 2), numberText(summary.rHat, 3),

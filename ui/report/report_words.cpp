@@ -62,8 +62,8 @@ QString modelText(const ResponseModel& model) {
     if (model.sideBiasDeviation > 0)
         text += Words::tr(", a side bias");
     if (model.lapse > 0)
-        text += Words::tr(" and a lapse of %1 %").arg(QString::number(100 * model.lapse));
-    return text + Words::tr("; intervals hold with a posterior probability of 90 %.");
+        text += Words::tr(" and a lapse of %1\u00a0%").arg(QString::number(100 * model.lapse));
+    return text + Words::tr("; intervals hold with a posterior probability of 90\u00a0%.");
 }
 
 } // namespace
@@ -104,7 +104,7 @@ QStringList modelTexts(const SessionFindings& findings) {
                        "levels k = 1 … %1, with cut points 0 %2 c[0] < c[1] < … (Agresti 1992)%3.")
                  .arg(QString::number(model.levels),
                       model.cannotTell ? QStringLiteral("<") : QStringLiteral("="),
-                      model.lapse > 0 ? Words::tr("; mixed with a lapse of %1 % that answers at random")
+                      model.lapse > 0 ? Words::tr("; mixed with a lapse of %1\u00a0% that answers at random")
                                             .arg(QString::number(100 * model.lapse))
                                       : QString());
     lines << (model.scaleDeviation > 0
