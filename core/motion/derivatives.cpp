@@ -71,6 +71,9 @@ Derivatives derivativesOf(const Trajectory& motion, double window) {
         derivatives.speed.push_back(lengthOf(x.first, y.first));
         derivatives.acceleration.push_back(lengthOf(x.second, y.second));
         derivatives.jerk.push_back(lengthOf(x.third, y.third));
+        const double speed = derivatives.speed.back();
+        derivatives.across.push_back(speed > 0 ? std::abs(x.first * y.second - y.first * x.second) / speed
+                                               : 0);
     }
     return derivatives;
 }
@@ -80,6 +83,8 @@ EvenSpeed evenSpeedOf(const Trajectory& motion) {
     if (motion.time.size() < 2)
         return even;
     const double step = medianStep(motion.time);
+    if (!(motion.duration() / step < 10.0 * static_cast<double>(motion.time.size())))
+        return even;
     even.rate = 1 / step;
     const auto count = static_cast<std::size_t>(std::lround(motion.duration() / step)) + 1;
     std::vector<Instant> instants;

@@ -13,6 +13,7 @@ struct Derivatives {
     std::vector<double> speed = {};        ///< m/s
     std::vector<double> acceleration = {}; ///< m/s^2
     std::vector<double> jerk = {};         ///< m/s^3
+    std::vector<double> across = {}; ///< m/s^2, the acceleration's part across the direction of movement
 };
 
 /// Derivatives of the least-squares cubic through the samples within half of `window` seconds on either side,
@@ -21,6 +22,7 @@ struct Derivatives {
 Derivatives derivativesOf(const Trajectory& motion, double window);
 
 /// The speed at equal steps of the median interval, from central differences of the interpolated positions.
+/// Empty if that would take more than ten times the motion's own samples.
 struct EvenSpeed {
     std::vector<double> speed = {}; ///< m/s
     double rate = 0;                ///< Hz

@@ -4,6 +4,7 @@
 #include "core/files/toml_table.h"
 
 #include <algorithm>
+#include <fmt/format.h>
 
 namespace whichway {
 namespace {
@@ -85,12 +86,15 @@ private:
         return path;
     }
 
-    static DrawnRange drawn(TomlTable& manner, const std::string& key, DrawnRange otherwise) {
+    static DrawnRange drawn(TomlTable& manner, const std::string& key, DrawnRange otherwise, double low,
+                            double high) {
         const std::vector<double> values = manner.numbers(key, 2);
         if (values.size() != 2)
             return otherwise;
         if (!(values[0] <= values[1]))
             range(manner, key, "has its larger number first");
+        else if (values[0] < low || values[1] > high)
+            range(manner, key, fmt::format("does not lie between {} and {}", low, high));
         return {values[0], values[1]};
     }
 
@@ -111,15 +115,15 @@ private:
         if (table.has("count") && (manner.count < 1 || manner.count > 5000))
             range(table, "count", "is not 1 to 5000");
         table.require("cruise");
-        manner.cruise = drawn(table, "cruise", {});
-        manner.gap = drawn(table, "gap", {0.3, 0.3});
-        manner.foresight = drawn(table, "foresight", {1.5, 1.5});
-        manner.side = drawn(table, "side", {0, 0});
-        manner.slowing = drawn(table, "slowing", {0, 0});
-        manner.unevenness = drawn(table, "unevenness", {0, 0});
-        manner.wander = drawn(table, "wander", {0, 0});
-        manner.wait = drawn(table, "wait", {0, 0});
-        manner.waitAt = drawn(table, "wait_at", {0.25, 0.65});
+        manner.cruise = drawn(table, "cruise", {}, 0.05, 20);
+        manner.gap = drawn(table, "gap", {0.3, 0.3}, 0, 20);
+        manner.foresight = drawn(table, "foresight", {1.5, 1.5}, 0.05, 50);
+        manner.side = drawn(table, "side", {0, 0}, -50, 50);
+        manner.slowing = drawn(table, "slowing", {0, 0}, 0, 1);
+        manner.unevenness = drawn(table, "unevenness", {0, 0}, 0, 1);
+        manner.wander = drawn(table, "wander", {0, 0}, 0, 20);
+        manner.wait = drawn(table, "wait", {0, 0}, 0, 60);
+        manner.waitAt = drawn(table, "wait_at", {0.25, 0.65}, 0, 1);
         table.refuseOthers();
         return manner;
     }

@@ -10,7 +10,7 @@
 namespace whichway {
 namespace {
 
-constexpr double kStep = 0.01;           // s, of the integration
+constexpr double kLongestStep = 0.01;    // s, of the integration
 constexpr int kMostDraws = 400;          // of one motion
 constexpr double kLeastClearance = 0.02; // m, to people and walls
 constexpr double kNearRepeat = 0.04;     // m, mean distance at equal times
@@ -68,10 +68,11 @@ public:
     std::optional<Trajectory> run() {
         Trajectory motion;
         motion.people.resize(recipe_.people.size());
-        const int every = std::max(1, static_cast<int>(std::lround(1 / (recipe_.rate * kStep))));
-        const int most = static_cast<int>(std::lround(recipe_.mostSeconds / kStep));
+        const int every = static_cast<int>(std::ceil(1 / (recipe_.rate * kLongestStep) - 1e-9));
+        step_ = 1 / (recipe_.rate * every);
+        const int most = static_cast<int>(recipe_.mostSeconds / step_ + 1e-9);
         for (int i = 0; i <= most; ++i) {
-            const double t = i * kStep;
+            const double t = i * step_;
             std::vector<Instant::Position> people;
             for (const auto& path : recipe_.people)
                 people.push_back(positionAt(path, t));
@@ -145,7 +146,7 @@ private:
         const double left = scene_.goal[0] - state_.x;
         const double done = (state_.x - recipe_.startX) / (scene_.goal[0] - recipe_.startX);
         if (driving_.wait > 0 && done >= driving_.waitAt && waited_ < driving_.wait) {
-            waited_ += kStep;
+            waited_ += step_;
             return 0;
         }
         return std::min(speed, std::sqrt(std::max(0.0, 1.6 * recipe_.base.acceleration * left)) + 0.05);
@@ -158,7 +159,7 @@ private:
         const double settle = std::clamp(1 - left / 2.0, 0.0, 1.0);
         const double y = (1 - settle) * wantedY(t, people) + settle * scene_.goal[1];
         const double wantedHeading = std::atan2(y - state_.y, kLookAhead);
-        state_ = driveFor(kStep, state_, wantedSpeed(t, people), 2.5 * (wantedHeading - state_.heading),
+        state_ = driveFor(step_, state_, wantedSpeed(t, people), 2.5 * (wantedHeading - state_.heading),
                           recipe_.base);
     }
 
@@ -167,6 +168,7 @@ private:
     const Driving& driving_;
     Rectangle corridor_;
     BaseState state_;
+    double step_ = 0; ///< s
     double waited_ = 0;
 };
 
@@ -189,6 +191,11 @@ Result<std::vector<MadeMotion>> makeLibrary(const LibraryRecipe& recipe, const S
                      .place = {.file = recipe.scenePath},
                      .message = "The scene has no goal to drive to.",
                      .remedy = "Give it goal = [x, y]."};
+    if (!(scene.goal[0] > recipe.startX))
+        return Error{.code = "recipe.cannot",
+                     .place = {.file = recipe.scenePath},
+                     .message = "The goal does not lie to the right of the start.",
+                     .remedy = "Motions are driven along +x: move the start or the goal."};
     std::vector<MadeMotion> made;
     std::vector<std::pair<std::string, int>> numbers; // last number of each prefix
     for (std::size_t m = 0; m < recipe.manners.size(); ++m) {

@@ -160,7 +160,7 @@ Result<double> roughness(const Trajectory& motion, const Scene*, const MeasureSe
 Result<double> logDimensionlessJerk(const Trajectory& motion, const Scene*, const MeasureSettings&) {
     const EvenSpeed even = evenSpeedOf(motion);
     if (even.speed.size() < 3 || !(peakOf(even.speed) > 0))
-        return undefined("The motion is too short, or stands still.");
+        return undefined("The motion stands still, is too short, or is sampled too unevenly.");
     const double jerk = -dimensionlessJerk(even.speed, even.rate);
     if (!(jerk > 1e-9))
         return undefined("The speed is constant, so the logarithm of its jerk is not defined.");
@@ -170,7 +170,7 @@ Result<double> logDimensionlessJerk(const Trajectory& motion, const Scene*, cons
 Result<double> spectralArc(const Trajectory& motion, const Scene*, const MeasureSettings& chosen) {
     const EvenSpeed even = evenSpeedOf(motion);
     if (even.speed.size() < 2 || !(peakOf(even.speed) > 0))
-        return undefined("The motion stands still.");
+        return undefined("The motion stands still or is sampled too unevenly.");
     return spectralArcLength(even.speed, even.rate, chosen.at("cutoff"), chosen.at("threshold"));
 }
 
@@ -197,6 +197,22 @@ Result<double> meanCurvature(const Trajectory& motion, const Scene* scene, const
     if (!(length > 0.01))
         return undefined("The motion stands still.");
     return *totalTurning(motion, scene, chosen) / length;
+}
+
+Result<double> peakCurvature(const Trajectory& motion, const Scene*, const MeasureSettings& chosen) {
+    const Derivatives derivatives = derivativesOf(motion, chosen.at("window"));
+    double peak = 0;
+    bool moves = false;
+    for (std::size_t i = 0; i < derivatives.speed.size(); ++i) {
+        const double speed = derivatives.speed[i];
+        if (speed < chosen.at("slowest"))
+            continue;
+        moves = true;
+        peak = std::max(peak, derivatives.across[i] / (speed * speed));
+    }
+    if (!moves)
+        return undefined("The motion is never fast enough to have a curvature.");
+    return peak;
 }
 
 Result<double> keepingRight(const Trajectory& motion, const Scene* scene, const MeasureSettings& chosen) {
@@ -267,9 +283,17 @@ const Measure kMeasures[] = {
     {"detour", "1", "Path length over the straight distance from start to end.", {}, false, detour},
     {"total turning", "rad", "Sum of the absolute changes of heading.", {}, false, totalTurning},
     {"mean curvature", "1/m", "Total turning over path length.", {}, false, meanCurvature},
+    {"peak curvature",
+     "1/m",
+     "Largest |x' y'' - y' x''| / speed^3, from local cubic fits, where the speed is at least `slowest`.",
+     {{"window", 0.2}, {"slowest", 0.1}},
+     false,
+     peakCurvature},
     {"keeping right",
      "m",
-     "Mean over time of the offset to the right of the corridor's axis, seen along the way.",
+     "Mean over time of the offset to the right of the corridor's axis, seen along the way; the axis lies "
+     "along x "
+     "at the scene's keep_right_axis, or at y = `axis` where there is no scene.",
      {{"axis", 0}},
      false,
      keepingRight},
@@ -287,6 +311,18 @@ const Measure* findMeasure(std::string_view phrase) {
     return found == std::end(kMeasures) ? nullptr : found;
 }
 
+std::optional<std::string> faultOfSetting(std::string_view name, double value) {
+    if (!std::isfinite(value))
+        return "It is not finite.";
+    if (name == "axis" || name == "robot_radius" || name == "person_radius")
+        return std::nullopt; // a negative radius is the scene's
+    if (!(value > 0))
+        return "It is not above 0.";
+    if (name == "threshold" && value >= 1)
+        return "It is not below 1.";
+    return std::nullopt;
+}
+
 Result<double> evaluateMeasure(const Measure& measure, const Trajectory& motion, const Scene* scene,
                                const MeasureSettings& overrides) {
     MeasureSettings chosen = measure.settings;
@@ -294,6 +330,9 @@ Result<double> evaluateMeasure(const Measure& measure, const Trajectory& motion,
         if (!chosen.contains(key))
             throw std::invalid_argument("evaluateMeasure: “" + measure.phrase + "” has no setting “" + key +
                                         "”");
+        if (const auto fault = faultOfSetting(key, value))
+            throw std::invalid_argument("evaluateMeasure: the setting “" + key + "” cannot be " +
+                                        std::to_string(value) + ". " + *fault);
         chosen[key] = value;
     }
     if (motion.time.size() < 2)

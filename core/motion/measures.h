@@ -6,6 +6,7 @@
 #include "core/result.h"
 
 #include <map>
+#include <optional>
 #include <span>
 #include <string>
 #include <string_view>
@@ -35,8 +36,12 @@ std::span<const Measure> measures();
 /// nullptr if there is none of that phrase.
 const Measure* findMeasure(std::string_view phrase);
 
+/// Why a measure's setting cannot have that value, in one sentence; nothing if it can.
+std::optional<std::string> faultOfSetting(std::string_view name, double value);
+
 /// Evaluates with `overrides` over the defaults.
-/// @throws std::invalid_argument if `overrides` names a setting that the measure does not know.
+/// @throws std::invalid_argument if `overrides` names a setting that the measure does not know or that has a
+/// fault, or if the motion has fewer than 2 samples.
 Result<double> evaluateMeasure(const Measure& measure, const Trajectory& motion, const Scene* scene,
                                const MeasureSettings& overrides = {});
 

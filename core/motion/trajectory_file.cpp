@@ -10,13 +10,16 @@
 #include <map>
 #include <numbers>
 #include <optional>
+#include <set>
 
 namespace whichway {
 namespace {
 
 constexpr std::size_t kMostSamples = 20000;
 constexpr std::size_t kMostPeople = 50;
-constexpr double kFarthest = 10000; // m
+constexpr double kFarthest = 10000;   // m
+constexpr double kStandsBelow = 0.02; // m/s: too slow to tell a direction from noise
+constexpr std::size_t kMostTold = 20; // problems: the same fault in every row is told often enough
 
 /// What a column holds: 0 time, 1 x, 2 y, 3 heading, then two for each person.
 constexpr std::size_t kTime = 0, kX = 1, kY = 2, kHeading = 3, kFirstPerson = 4;
@@ -27,6 +30,8 @@ std::optional<std::size_t> personOf(std::string_view quantity) {
     if (!quantity.starts_with(kPrefix) || quantity.size() < kPrefix.size() + 3)
         return std::nullopt;
     const std::string_view number = quantity.substr(kPrefix.size(), quantity.size() - kPrefix.size() - 2);
+    if (number.front() == '0') // "person01" would be a second name of person 1
+        return std::nullopt;
     std::size_t person = 0;
     const auto [end, status] = std::from_chars(number.data(), number.data() + number.size(), person);
     if (status != std::errc() || end != number.data() + number.size() || person < 1 || person > kMostPeople)
@@ -37,6 +42,7 @@ std::optional<std::size_t> personOf(std::string_view quantity) {
 struct Column {
     std::optional<std::size_t> slot = {};
     std::string wantedUnit = {};
+    bool unitIsRight = false;
 };
 
 Column columnOf(std::string_view name) {
@@ -44,23 +50,21 @@ Column columnOf(std::string_view name) {
     const std::string_view quantity = name.substr(0, at);
     const std::string_view unit = at == std::string_view::npos ? "" : name.substr(at + 1);
     Column column;
-    std::optional<std::size_t> slot;
     if (quantity == "time") {
-        slot = kTime;
+        column.slot = kTime;
         column.wantedUnit = "s";
     } else if (quantity == "x" || quantity == "y") {
-        slot = quantity == "x" ? kX : kY;
+        column.slot = quantity == "x" ? kX : kY;
         column.wantedUnit = "m";
     } else if (quantity == "heading") {
-        slot = kHeading;
+        column.slot = kHeading;
         column.wantedUnit = "rad";
     } else if (const auto person = personOf(quantity);
                person && (quantity.ends_with("_x") || quantity.ends_with("_y"))) {
-        slot = kFirstPerson + 2 * (*person - 1) + (quantity.ends_with("_y") ? 1 : 0);
+        column.slot = kFirstPerson + 2 * (*person - 1) + (quantity.ends_with("_y") ? 1 : 0);
         column.wantedUnit = "m";
     }
-    if (slot && unit == column.wantedUnit)
-        column.slot = slot;
+    column.unitIsRight = column.slot && unit == column.wantedUnit;
     return column;
 }
 
@@ -99,18 +103,22 @@ private:
     void readHeader(const CsvTable& table) {
         const std::vector<std::string> known = {"time_s",      "x_m",         "y_m",
                                                 "heading_rad", "person1_x_m", "person1_y_m"};
+        std::set<std::size_t> misnamed; // there, but under a wrong name: not missing as well
         for (std::size_t i = 0; i < table.header.size(); ++i) {
             const CsvCell& cell = table.header[i];
             const Column column = columnOf(cell.text);
-            if (column.slot) {
+            if (column.unitIsRight) {
                 at_[*column.slot] = i;
-            } else if (!column.wantedUnit.empty()) {
+            } else if (column.slot) {
+                misnamed.insert(*column.slot);
                 const std::string right = cell.text.substr(0, cell.text.rfind('_')) + "_" + column.wantedUnit;
                 report("trajectory.unit", cell.line, cell.column,
                        "The column “" + cell.text + "” is not in the unit that this program reads.",
                        "Convert the values and name the column “" + right + "”.", {cell.text, right});
             } else {
                 const std::string nearest = nearestName(cell.text, known);
+                if (const Column meant = columnOf(nearest); meant.slot)
+                    misnamed.insert(*meant.slot);
                 report("trajectory.unknown-column", cell.line, cell.column,
                        "“" + cell.text + "” is not a column of a motion.",
                        nearest.empty() ? "Remove it." : "Did you mean “" + nearest + "”?",
@@ -121,10 +129,8 @@ private:
         for (const auto& [slot, index] : at_)
             if (slot >= kFirstPerson)
                 people = std::max(people, (slot - kFirstPerson) / 2 + 1);
-        if (!reading_.problems.empty())
-            return;
         const auto require = [&](std::size_t slot, const std::string& name) {
-            if (!at_.contains(slot))
+            if (!at_.contains(slot) && !misnamed.contains(slot))
                 report("trajectory.missing-column", table.header.front().line, 1,
                        "The column “" + name + "” is missing.", "Add it.", {name});
         };
@@ -181,8 +187,8 @@ private:
                            "The coordinate is beyond 10 km.", "Check the unit: it is metres here.");
                 else
                     list.push_back(*value);
-                if (reading_.problems.size() >= 20)
-                    return; // the same fault in every row: enough is said
+                if (reading_.problems.size() >= kMostTold)
+                    return;
             }
         }
         std::stable_sort(
@@ -207,7 +213,8 @@ private:
                    repeats ? "Keep one of the two rows."
                            : "Sort the rows by time, or remove the clock's jump.",
                    {cell.text});
-            return;
+            if (reading_.problems.size() >= kMostTold)
+                return;
         }
         std::nth_element(steps.begin(), steps.begin() + static_cast<std::ptrdiff_t>(steps.size() / 2),
                          steps.end());
@@ -224,20 +231,32 @@ private:
         const double start = motion.time.front();
         for (double& t : motion.time)
             t -= start;
-        if (!at_.contains(kHeading)) {
-            // Standing still keeps the heading of the last movement, so that a stop does not turn the
-            // drawing.
-            motion.heading.assign(motion.time.size(), 0.0);
-            for (std::size_t i = 0; i < motion.time.size(); ++i) {
-                const std::size_t a = i + 1 < motion.time.size() ? i : i - 1;
-                const double dx = motion.x[a + 1] - motion.x[a], dy = motion.y[a + 1] - motion.y[a];
-                motion.heading[i] =
-                    std::hypot(dx, dy) > 1e-6 ? std::atan2(dy, dx) : (i > 0 ? motion.heading[i - 1] : 0);
-            }
-        }
+        if (!at_.contains(kHeading))
+            takeHeadingFromMovement();
         constexpr double kTurn = 2 * std::numbers::pi;
         for (std::size_t i = 1; i < motion.heading.size(); ++i)
             motion.heading[i] -= kTurn * std::round((motion.heading[i] - motion.heading[i - 1]) / kTurn);
+    }
+
+    /// Standing still keeps the heading of the last movement, or takes that of the first one to come, so that
+    /// a stop turns nothing.
+    void takeHeadingFromMovement() {
+        Trajectory& motion = reading_.trajectory;
+        motion.heading.assign(motion.time.size(), 0.0);
+        bool moved = false;
+        for (std::size_t i = 0; i < motion.time.size(); ++i) {
+            const std::size_t a = i + 1 < motion.time.size() ? i : i - 1;
+            const double dx = motion.x[a + 1] - motion.x[a], dy = motion.y[a + 1] - motion.y[a];
+            const double dt = motion.time[a + 1] - motion.time[a];
+            if (!(std::hypot(dx, dy) > kStandsBelow * dt)) {
+                motion.heading[i] = i > 0 ? motion.heading[i - 1] : 0;
+                continue;
+            }
+            motion.heading[i] = std::atan2(dy, dx);
+            if (!moved)
+                std::fill_n(motion.heading.begin(), i, motion.heading[i]);
+            moved = true;
+        }
     }
 
     const std::string& file_;

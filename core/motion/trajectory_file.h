@@ -17,10 +17,11 @@ struct TrajectoryReading {
 
 /// Reads one motion from CSV with the columns
 ///     time_s, x_m, y_m, heading_rad, person1_x_m, person1_y_m, person2_x_m, …
-/// in any order. The heading may be left out: then it is that of the movement. Times become relative to the
-/// first. Problems: the codes of csv.h, "trajectory.unit" (a known quantity in another unit),
-/// "trajectory.unknown-column", "trajectory.missing-column", "trajectory.too-short" (fewer than 2 samples),
-/// "trajectory.too-long" (more than 20,000 samples), "trajectory.time-repeats", "trajectory.time-backward",
+/// in any order. The heading may be left out: then it is that of the movement, and a robot slower than
+/// 0.02 m/s keeps the one it had. Times become relative to the first. Problems: the codes of csv.h,
+/// "trajectory.unit" (a known quantity in another unit), "trajectory.unknown-column",
+/// "trajectory.missing-column", "trajectory.too-short" (fewer than 2 samples), "trajectory.too-long" (more
+/// than 20,000 samples), "trajectory.time-repeats", "trajectory.time-backward",
 /// "trajectory.time-looks-like-ms" (a median step of 5 s or more), "trajectory.too-far" (a coordinate beyond
 /// 10 km).
 TrajectoryReading parseTrajectory(std::string_view content, const std::string& file);

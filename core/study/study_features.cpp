@@ -23,6 +23,16 @@ bool isFeatureName(const std::string& name) {
     });
 }
 
+void readSetting(StudySection& section, const StudySection& settings, const std::string& name, double value,
+                 FeatureDefinition& feature) {
+    if (const auto fault = faultOfSetting(name, value))
+        section.report("study.setting-range", settings.placeOf(name),
+                       fmt::format("“{}” cannot be {} here. {}", name, value, *fault),
+                       "Leave it out for the measure's own value.", {name});
+    else
+        feature.settings[name] = value;
+}
+
 void readSettings(StudySection& section, const Measure* measure, FeatureDefinition& feature) {
     StudySection settings = section.table("settings", Need::Optional);
     if (!settings.exists())
@@ -35,7 +45,7 @@ void readSettings(StudySection& section, const Measure* measure, FeatureDefiniti
         const double value = settings.number(name, 0, std::numeric_limits<double>::lowest(),
                                              std::numeric_limits<double>::max());
         if (std::find(known.begin(), known.end(), name) != known.end())
-            feature.settings[name] = value;
+            readSetting(section, settings, name, value, feature);
         else if (feature.measure.empty())
             section.report("study.unknown-setting", settings.keyPlaceOf(name),
                            "Settings are of a measure, and this feature is given in features.csv.",
