@@ -15,7 +15,7 @@ public:
 
     LibraryRecipe read() {
         LibraryRecipe recipe;
-        if (table_.integer("format") != 1 && table_.has("format"))
+        if (table_.integer("format") != 1 && table_.has("format") && !table_.isFaulty("format"))
             table_.report("recipe.format", table_.placeOf("format"),
                           "This program reads recipes of format 1.", "Write format = 1.");
         (void)table_.flag("invented", false); // said in the study file; here for whoever reads the recipe
@@ -67,7 +67,7 @@ private:
     static double within(TomlTable& table, const std::string& key, double low, double high,
                          std::optional<double> otherwise = std::nullopt) {
         const double value = table.number(key, otherwise);
-        if (table.has(key) && !(value >= low && value <= high))
+        if (table.has(key) && !table.isFaulty(key) && !(value >= low && value <= high))
             range(table, key, "is out of range");
         return value;
     }
@@ -80,7 +80,7 @@ private:
                 range(person, "path", "has times that do not grow");
                 break;
             }
-        if (person.has("path") && path.empty())
+        if (person.has("path") && path.empty() && !person.isFaulty("path"))
             range(person, "path", "is empty");
         person.refuseOthers();
         return path;
@@ -112,7 +112,7 @@ private:
         if (!plain)
             range(table, "prefix", "is not made of small letters");
         manner.count = static_cast<int>(table.integer("count"));
-        if (table.has("count") && (manner.count < 1 || manner.count > 5000))
+        if (table.has("count") && !table.isFaulty("count") && (manner.count < 1 || manner.count > 5000))
             range(table, "count", "is not 1 to 5000");
         table.require("cruise");
         manner.cruise = drawn(table, "cruise", {}, 0.05, 20);

@@ -23,7 +23,7 @@ public:
                            std::all_of(scene.name.begin(), scene.name.end(), [](unsigned char c) {
                                return c == '_' || c == '-' || (c < 128 && std::isalnum(c));
                            });
-        if (!named && table_.has("name"))
+        if (!named && table_.has("name") && !table_.isFaulty("name"))
             table_.report("scene.name", table_.placeOf("name"),
                           "“" + scene.name + "” is not a name for a scene.",
                           "Use 1 to 64 letters, digits, “-” or “_”.");
@@ -73,7 +73,7 @@ private:
 
     static double positive(TomlTable& table, const std::string& key) {
         const double value = table.number(key);
-        if (table.has(key) && !(value > 0 && value <= 10))
+        if (table.has(key) && !table.isFaulty(key) && !(value > 0 && value <= 10))
             table.report("scene.range", table.placeOf(key), "“" + key + "” is not between 0 and 10 m.",
                          "Give it in metres.");
         return value;
