@@ -141,7 +141,7 @@ Prediction findPrediction(const SessionState& state, const ResponseModel& model,
         found.accuracy = exactProportion(found.heldOut.count, found.heldOut.of);
     if (scored > 0)
         found.logScore = logScore / scored;
-    if (repeats.of > 0 && 2 * repeats.count >= repeats.of) {
+    if (repeats.of > 0 && 2 * repeats.count > repeats.of) {
         const double a = static_cast<double>(repeats.count) / repeats.of;
         found.reachable = Interval{.median = a, .low = a, .high = 0.5 * (1 + std::sqrt(2 * a - 1))};
     }

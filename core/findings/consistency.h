@@ -54,7 +54,8 @@ struct Prediction {
     bool tooFew = true;                  ///< fewer than 10 held-out trials
     /// Between these the best reachable accuracy lies, given the agreement a of repeats: a to (1 + sqrt(2a -
     /// 1)) / 2.
-    std::optional<Interval> reachable = {}; ///< nothing without repeats or with an agreement below one half
+    std::optional<Interval> reachable =
+        {}; ///< nothing without repeats or with an agreement of one half or less
 };
 
 Prediction findPrediction(const SessionState& state, const ResponseModel& model, const Draws& draws,

@@ -13,6 +13,16 @@
 namespace whichway {
 namespace {
 
+/// Characters that XML 1.0 does not allow at all (section 2.2) become U+FFFD.
+QString allowedInXml(QString text) {
+    for (QChar& c : text)
+        if ((c < QLatin1Char(' ') && c != QLatin1Char('\n') && c != QLatin1Char('\r') &&
+             c != QLatin1Char('\t')) ||
+            c == QChar(0xfffe) || c == QChar(0xffff))
+            c = QChar(0xfffd);
+    return text;
+}
+
 /// The generator's own head holds a prologue, a size in millimetres and a comment; this leaves the drawing.
 QString drawingOf(const QByteArray& document) {
     const QString text = QString::fromUtf8(document);
@@ -28,7 +38,7 @@ QString drawingOf(const QByteArray& document) {
     // A true minus may come from another font than the digits behind it; placed apart they would gape.
     static const QRegularExpression kApart(QStringLiteral("\u2212</text>\\s*<text[^>]*>"));
     drawing.replace(kApart, QString(QChar(0x2212)));
-    return drawing.trimmed();
+    return allowedInXml(drawing.trimmed());
 }
 
 } // namespace
@@ -47,8 +57,8 @@ QString vectorImage(const QSizeF& size, const QString& name, const std::function
     painter.end();
     return QStringLiteral("<svg xmlns=\"http://www.w3.org/2000/svg\" viewBox=\"0 0 %1 %2\" width=\"%1\" "
                           "height=\"%2\" role=\"img\" aria-label=\"%3\">%4</svg>")
-        .arg(QString::number(size.width()), QString::number(size.height()), name.toHtmlEscaped(),
-             drawingOf(document));
+        .arg(QString::number(size.width()), QString::number(size.height()),
+             allowedInXml(name).toHtmlEscaped(), drawingOf(document));
 }
 
 QString vectorImage(QChart& chart, const QSizeF& size, const QString& name) {

@@ -218,7 +218,7 @@ void ReportPage::prediction() {
                      QString::number(findings_.consistency.repeats.of),
                      numberText(100 * found.reachable->low, 0), numberText(100 * found.reachable->high, 0));
     else if (findings_.consistency.repeats.of > 0)
-        side += tr(" Repeats agreed less often than by chance, so no reachable range follows from them.");
+        side += tr(" Repeats agreed no more often than by chance, so no reachable range follows from them.");
     out_.line("p", side, QStringLiteral("side")).close();
 }
 

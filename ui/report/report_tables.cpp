@@ -39,7 +39,7 @@ QString wordsUsed(const SessionState& state, const Consistency& consistency) {
         const bool hasWord = shown != all.end() && level < shown->confidence.size();
         const QString word =
             hasWord ? QString::fromStdString(shown->confidence[level]) : Words::tr("level %1").arg(level + 1);
-        parts << Words::tr("“%1” %2").arg(word).arg(consistency.confidence[level]);
+        parts << Words::tr("“%1” %2").arg(word, QString::number(consistency.confidence[level]));
     }
     return parts.join(QStringLiteral(", "));
 }
@@ -67,8 +67,9 @@ QString answerText(const SessionState& state, const AnsweredTrial& answer) {
     if (answer.answer == 0)
         return Words::tr("cannot tell");
     const QString side = answer.answer > 0 ? Words::tr("left") : Words::tr("right");
-    return state.began.protocol.levels > 1 ? Words::tr("%1, %2").arg(side).arg(std::abs(answer.answer))
-                                           : side;
+    return state.began.protocol.levels > 1
+               ? Words::tr("%1, %2").arg(side, QString::number(std::abs(answer.answer)))
+               : side;
 }
 
 } // namespace

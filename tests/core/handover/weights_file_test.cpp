@@ -89,7 +89,8 @@ TEST_F(Weights, CarryTheCautions) {
 TEST_F(Weights, HoldNoNumberForATradeOffThatIsNotDetermined) {
     for (TradeOff& tradeOff : findings.tradeOffs)
         tradeOff.determined = false;
-    for (const auto& tradeOff : file().at("trade_offs"))
+    const auto whole = file(); // a loop over a part of a temporary would outlive it
+    for (const auto& tradeOff : whole.at("trade_offs"))
         EXPECT_TRUE(tradeOff.at("change").is_null());
 }
 

@@ -79,6 +79,11 @@ TEST(PersonalSpaceCost, OfAStraightPassIsAGaussianIntegral) {
     }
 }
 
+TEST(PersonalSpaceCost, OfStandingBesideSomebodyIsTheValueThere) {
+    const Trajectory motion = withPerson(straight(0, 3, 20), [](double) { return Spot{0.9, 0}; });
+    EXPECT_NEAR(numberOf("personal space cost", motion, {{"range", 0.6}}), std::exp(-0.5 * 1.5 * 1.5), 1e-12);
+}
+
 TEST(SpeedBesidePeople, OfAConstantSpeedIsThatSpeed) {
     EXPECT_NEAR(numberOf("speed beside people", past(0.5, 1.7, 50)), 1.7, 1e-9);
 }
