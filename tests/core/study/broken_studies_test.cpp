@@ -94,7 +94,7 @@ const Fault kFaults[] = {
     {"UnknownMeasure", toml("\"travel time\"", "\"travl time\""), "study.unknown-measure", "study.toml:27:11"},
     {"UnknownSetting", toml(kSettings, kSettings + "settings = { reach = 1 }\n"), "study.unknown-setting",
      "study.toml:28:14"},
-    {"SettingThatCannotBe", toml(kSettings, "measure = \"roughness\"\nsettings = { window = 0 }\n"),
+    {"SettingThatCannotBe", toml("unit = \"s\"\n" + kSettings, "unit = \"m/s3\"\nmeasure = \"roughness\"\nsettings = { window = 0 }\n"),
      "study.setting-range", "study.toml:28:23"},
     {"SettingsWithoutMeasure", toml("scale = \"log\"", "scale = \"log\"\nsettings = { reach = 1 }"),
      "study.unknown-setting", "study.toml:34:14"},
